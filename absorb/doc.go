@@ -1,0 +1,2 @@
+// Package absorb is part of photonledger.
+package absorb

@@ -1,0 +1,2 @@
+// Package photonledger accounts for every photon that falls on a solar cell.
+package photonledger

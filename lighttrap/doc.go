@@ -1,0 +1,2 @@
+// Package lighttrap is part of photonledger.
+package lighttrap

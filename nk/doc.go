@@ -1,0 +1,2 @@
+// Package nk is part of photonledger.
+package nk

@@ -1,0 +1,2 @@
+// Package optics is part of photonledger.
+package optics

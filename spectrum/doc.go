@@ -1,0 +1,2 @@
+// Package spectrum is part of photonledger.
+package spectrum
