@@ -1,0 +1,256 @@
+package optics
+
+import (
+	"fmt"
+	"math"
+	"runtime"
+	"sync"
+)
+
+// Sweep describes one stack at many wavelengths and angles. W is the number of
+// wavelengths, S that of films; everything that depends on the wavelength is
+// contiguous in it.
+type Sweep struct {
+	Wavelength   []float64 // vacuum wavelength, nm, W values in any order
+	Angle        []float64 // angles in the front medium, rad
+	Polarization Polarization
+	Front        []float64 // index of the front medium, W values
+	Thickness    []float64 // nm, S values
+	Incoherent   []bool    // nil for all coherent, or S values
+	N, K         []float64 // index n + ik of film j at wavelength w: [j*W+w]
+	BackN, BackK []float64 // index of the back medium, W values
+	Workers      int       // goroutines: 1 none but the caller's, 0 one per processor; no bit of the result depends on it
+}
+
+// SweepResponse holds the shares of a [Sweep] with W wavelengths and S films.
+type SweepResponse struct {
+	R, T []float64 // wavelength w at angle a: [a*W+w]
+	A    []float64 // film j: [(a*S+j)*W+w]
+}
+
+// NewSweep allocates a sweep in air or vacuum at normal incidence: front and
+// back index 1, films of index 1 and thickness 0.
+func NewSweep(wavelength []float64, films int) Sweep {
+	w := len(wavelength)
+	s := Sweep{
+		Wavelength: wavelength,
+		Angle:      []float64{0},
+		Front:      make([]float64, w),
+		Thickness:  make([]float64, films),
+		Incoherent: make([]bool, films),
+		N:          make([]float64, films*w),
+		K:          make([]float64, films*w),
+		BackN:      make([]float64, w),
+		BackK:      make([]float64, w),
+		Workers:    1,
+	}
+	for _, v := range [][]float64{s.Front, s.N, s.BackN} {
+		for i := range v {
+			v[i] = 1
+		}
+	}
+	return s
+}
+
+// SetFilm stores the index (one value per wavelength) and thickness of film j.
+func (s *Sweep) SetFilm(j int, index []complex128, thickness float64) error {
+	w := len(s.Wavelength)
+	if j < 0 || j >= len(s.Thickness) || (j+1)*w > len(s.N) || (j+1)*w > len(s.K) {
+		return fmt.Errorf("optics: sweep: film %d: there are %d films: %w", j, len(s.Thickness), ErrInput)
+	}
+	s.Thickness[j] = thickness
+	return setIndex(s.N[j*w:(j+1)*w], s.K[j*w:(j+1)*w], index)
+}
+
+// SetBack stores the index of the back medium, one value per wavelength.
+func (s *Sweep) SetBack(index []complex128) error {
+	return setIndex(s.BackN, s.BackK, index)
+}
+
+func setIndex(n, k []float64, index []complex128) error {
+	if len(index) != len(n) || len(n) != len(k) {
+		return fmt.Errorf("optics: sweep: %d indices for %d wavelengths: %w", len(index), len(n), ErrInput)
+	}
+	for i, v := range index {
+		n[i], k[i] = real(v), imag(v)
+	}
+	return nil
+}
+
+// Run computes the sweep; see [Sweeper.Run].
+func (s *Sweep) Run() (SweepResponse, error) {
+	var sw Sweeper
+	var r SweepResponse
+	err := sw.Run(&r, s)
+	return r, err
+}
+
+// Sweeper is the working memory for many sweeps. The zero value is ready; one
+// goroutine at a time. With Workers = 1 it allocates nothing in the steady
+// state.
+type Sweeper struct {
+	blocks []block
+}
+
+// Run computes reflectance, transmittance and absorptances of s for all its
+// wavelengths and angles. The slices of dst are grown when they are too short.
+// The values are the same bits as those of [Solver.Solve]. An error wraps
+// [ErrInput] and names the first value that is out of range.
+func (sw *Sweeper) Run(dst *SweepResponse, s *Sweep) error {
+	if err := s.Validate(); err != nil {
+		return err
+	}
+	w, films, angles := len(s.Wavelength), len(s.Thickness), len(s.Angle)
+	dst.R, dst.T, dst.A = grow(dst.R, angles*w), grow(dst.T, angles*w), grow(dst.A, angles*films*w)
+	perAngle := (w + lanes - 1) / lanes
+	jobs := angles * perAngle
+	workers := s.Workers
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	workers = max(1, min(workers, jobs))
+	if len(sw.blocks) < workers {
+		sw.blocks = make([]block, workers)
+	}
+	if workers == 1 {
+		runJobs(dst, s, &sw.blocks[0], 0, jobs)
+		return nil
+	}
+	var wg sync.WaitGroup
+	for i := range workers {
+		wg.Go(func() { runJobs(dst, s, &sw.blocks[i], i*jobs/workers, (i+1)*jobs/workers) })
+	}
+	wg.Wait()
+	return nil
+}
+
+// runJobs computes blocks from..to-1, numbered along the wavelengths of each
+// angle in turn.
+func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
+	w, films := len(s.Wavelength), len(s.Thickness)
+	table := filmTable{n: s.N, k: s.K, d: s.Thickness, stride: w}
+	bl.history = false
+	bl.prepare(s.Incoherent, films)
+	perAngle := (w + lanes - 1) / lanes
+	for job := from; job < to; job++ {
+		a, w0 := job/perAngle, job%perAngle*lanes
+		b := min(lanes, w-w0)
+		cos := math.Cos(s.Angle[a])
+		bl.setAngle(s.Angle[a])
+		for i := range b {
+			bl.setWave(i, s.Wavelength[w0+i], s.Front[w0+i], cos)
+			bl.setBack(i, s.BackN[w0+i], s.BackK[w0+i])
+		}
+		table.offset = w0
+		normal := s.Angle[a] == 0
+		bl.solve(&table, b, normal)
+		ws, wp := s.Polarization.weights()
+		if normal {
+			ws, wp = 1, 0
+		}
+		weigh(dst.R[a*w+w0:][:b], bl.r[0][:], bl.r[1][:], ws, wp)
+		weigh(dst.T[a*w+w0:][:b], bl.t[0][:], bl.t[1][:], ws, wp)
+		for j := range films {
+			weigh(dst.A[(a*films+j)*w+w0:][:b], bl.a[0][j*lanes:], bl.a[1][j*lanes:], ws, wp)
+		}
+	}
+}
+
+// weigh stores the mean of the intensities of both polarisations.
+func weigh(dst, s, p []float64, ws, wp float64) {
+	if wp == 0 {
+		for i := range dst {
+			dst[i] = ws * s[i]
+		}
+		return
+	}
+	for i := range dst {
+		dst[i] = ws*s[i] + wp*p[i]
+	}
+}
+
+// Validate reports the first length or value of the sweep that is wrong.
+func (s *Sweep) Validate() error {
+	w, films := len(s.Wavelength), len(s.Thickness)
+	for _, l := range [...]struct {
+		name      string
+		got, want int
+	}{
+		{"Front", len(s.Front), w}, {"N", len(s.N), films * w}, {"K", len(s.K), films * w},
+		{"BackN", len(s.BackN), w}, {"BackK", len(s.BackK), w}, {"Incoherent", len(s.Incoherent), films},
+	} {
+		if l.got != l.want && !(l.name == "Incoherent" && s.Incoherent == nil) {
+			return fmt.Errorf("optics: sweep: %s has %d values, want %d: %w", l.name, l.got, l.want, ErrInput)
+		}
+	}
+	if s.Polarization < Unpolarized || s.Polarization > P {
+		return fmt.Errorf("optics: sweep: unknown polarisation %d: %w", int(s.Polarization), ErrInput)
+	}
+	shortest := math.Inf(1)
+	for i, l := range s.Wavelength {
+		if !(l > 0) || math.IsInf(l, 1) {
+			return fmt.Errorf("optics: sweep: wavelength %d: %g nm is not a positive number: %w", i, l, ErrInput)
+		}
+		shortest = min(shortest, l)
+	}
+	for i, a := range s.Angle {
+		if err := checkAngle(a); err != nil {
+			return fmt.Errorf("optics: sweep: angle %d: %w", i, err)
+		}
+	}
+	for i, n := range s.Front {
+		if err := checkIndex(complex(n, 0)); err != nil {
+			return fmt.Errorf("optics: sweep: front medium, wavelength %g nm: %w", s.Wavelength[i], err)
+		}
+	}
+	if i, _ := checkRow(s.BackN, s.BackK); i >= 0 {
+		return fmt.Errorf("optics: sweep: back medium, wavelength %g nm: %w", s.Wavelength[i], checkIndex(complex(s.BackN[i], s.BackK[i])))
+	}
+	for j := range films {
+		if err := s.checkFilm(j, shortest); err != nil {
+			return fmt.Errorf("optics: sweep: film %d: %w", j, err)
+		}
+	}
+	return nil
+}
+
+func (s *Sweep) checkFilm(j int, shortest float64) error {
+	w, d := len(s.Wavelength), s.Thickness[j]
+	if err := checkThickness(d); err != nil {
+		return err
+	}
+	n, k := s.N[j*w:(j+1)*w], s.K[j*w:(j+1)*w]
+	i, largest := checkRow(n, k)
+	if i >= 0 {
+		return fmt.Errorf("wavelength %g nm: %w", s.Wavelength[i], checkIndex(complex(n[i], k[i])))
+	}
+	incoherent := s.Incoherent != nil && s.Incoherent[j]
+	// The sum n + k at the shortest wavelength bounds every phase of the film.
+	if !incoherent && 2*math.Pi*largest*d <= MaxPhase*shortest {
+		return nil
+	}
+	for i := range n {
+		if err := checkPhase(complex(n[i], k[i]), d, s.Wavelength[i], incoherent); err != nil {
+			return err
+		}
+	}
+	return nil
+}
+
+// checkRow returns the first position that checkIndex would refuse, or -1, and
+// the largest n + k.
+func checkRow(n, k []float64) (bad int, largest float64) {
+	k = k[:len(n)]
+	for i, re := range n {
+		im := k[i]
+		sum := re + im
+		// The modulus lies between sum/√2 and sum; near the limits ask exactly.
+		if !(re >= 0 && im >= 0 && sum >= 2*MinIndex && sum <= MaxIndex) && checkIndex(complex(re, im)) != nil {
+			return i, largest
+		}
+		if sum > largest {
+			largest = sum
+		}
+	}
+	return -1, largest
+}
