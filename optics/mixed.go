@@ -130,6 +130,9 @@ func (bl *block) balance(p, b int) {
 			m2 := k.m[l] * (1 + k.e[l])
 			rb, lost := r.r[p][l], r.asum[p][l]+r.d[p][l]
 			den := (lost + r.t[p][l]) + rb*(m2+e2*loss[l])
+			if den == 0 {
+				den = 1 // totally reflected on both sides: nothing enters, nothing leaves
+			}
 			turn := e2 * rho[l] * r.t[p][l] / den
 			k.turned[p][l] = k.e[l] * rho[l]
 			if k.e[l] == 0 {
