@@ -14,4 +14,6 @@ var (
 	// ErrUnknown: no material has this name, or no such figure is published
 	// for it.
 	ErrUnknown = errors.New("unknown")
+	// ErrConvergence: an iteration ended without an answer.
+	ErrConvergence = errors.New("no convergence")
 )
