@@ -180,7 +180,8 @@ func (g *group) amplitudes(f *fieldRow, p, b int) {
 		inv := 1 / (pr*pr + pi*pi)
 		g.r[p][i] = (mr*mr + mi*mi) * inv
 		g.rr[p][i], g.ri[p][i] = (mr*pr+mi*pi)*inv, (mi*pr-mr*pi)*inv
-		if etaRe > 0 {
+		// A wave that decays faster than it oscillates carries no flux of its own.
+		if etaRe > 0 && in.qi[i] < in.qr[i] {
 			g.g[p][i] = 4 * etaSq * inv / etaRe
 			// derived: the net flux of a(1+r) and η a(1-r) is
 			// |a|² [Re η (1-|r|²) + 2 Im η Im r].

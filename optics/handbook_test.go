@@ -15,7 +15,7 @@ const degree = math.Pi / 180
 // TestHandbook compares with the published values of testdata/handbook; each
 // row names its source and how it is known.
 func TestHandbook(t *testing.T) {
-	for _, file := range []string{"optics_reflectance.csv", "optics_films.csv"} {
+	for _, file := range []string{"optics_reflectance.csv", "optics_films.csv", "optics_haze.csv"} {
 		rows, err := check.Load("../testdata/handbook/" + file)
 		if err != nil {
 			t.Fatal(err)
@@ -50,6 +50,17 @@ func evaluate(row check.Row) (float64, error) {
 		n := (1 + root) / (1 - root)
 		r, err := Solve(Stack{Front: 1, Back: 1, Films: []Film{{Index: complex(n, 0), Thickness: 600 / (4 * n)}}}, Wave{Wavelength: 600})
 		return r.T, err
+	case "haze_reflection", "haze_transmission":
+		st := Stack{Front: complex(row.Num("n1"), 0), Back: complex(row.Num("n2"), 0)}
+		r, err := SolveRough(st, []float64{row.Num("sigma")}, Wave{Wavelength: row.Num("wavelength")})
+		if err != nil {
+			return 0, err
+		}
+		smooth, err := Solve(st, Wave{Wavelength: row.Num("wavelength")})
+		if row.Quantity == "haze_transmission" {
+			return 1 - r.T/smooth.T, err
+		}
+		return 1 - r.R/smooth.R, err
 	case "brewster_angle":
 		return BrewsterAngle(row.Num("n1"), row.Num("n2")) / degree, nil
 	case "critical_angle":

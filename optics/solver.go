@@ -35,6 +35,11 @@ type Solver struct {
 	block      block
 	table      filmTable
 	incoherent []bool
+
+	films          []Film    // of averages and graded films
+	slices         []Film    // of graded films
+	sample, last   Response  // the same
+	nodes, weights []float64 // the same
 }
 
 // Solve is the function [Solve] with the memory of s. dst.A is grown when it is
