@@ -11,7 +11,7 @@ const nmPerCM = 1e7
 // (M. Born and E. Wolf, Principles of Optics, section on metals; from memory).
 //
 // Special cases: NaN if k is negative or lambda is not positive, or either is
-// NaN or infinite.
+// NaN or infinite; +Inf if alpha overflows.
 func AbsorptionCoefficient(k, lambda float64) float64 {
 	if !amount(k) || !(lambda > 0) || math.IsInf(lambda, 1) {
 		return math.NaN()
@@ -23,7 +23,7 @@ func AbsorptionCoefficient(k, lambda float64) float64 {
 // coefficient in 1/cm and a vacuum wavelength in nm.
 //
 // Special cases: NaN if alpha is negative or lambda is not positive, or either
-// is NaN or infinite.
+// is NaN or infinite; +Inf if k overflows.
 func ExtinctionCoefficient(alpha, lambda float64) float64 {
 	if !amount(alpha) || !(lambda > 0) || math.IsInf(lambda, 1) {
 		return math.NaN()

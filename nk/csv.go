@@ -17,7 +17,8 @@ import (
 const (
 	maxRows  = 1_000_000 // rows of figures
 	maxLines = 2_000_000 // lines, comments and blank ones included
-	maxLine  = 1 << 16   // bytes per line
+	maxLine  = 1 << 16   // bytes per line, without its end
+	maxNote  = 60_000    // bytes of a comment that fills a field
 )
 
 // ParseError says where ReadCSV found a fault.
@@ -46,7 +47,7 @@ func (e *ParseError) Unwrap() error { return e.Err }
 //     bytes per line.
 //   - Comments: lines whose first visible character is #. A comment "name: ...",
 //     "material: ...", "source: ..." or "conditions: ..." fills that field of the
-//     Table, each at most once; all others are skipped.
+//     Table, each at most once and of at most 60,000 bytes; all others are skipped.
 //   - Header: the first line that is no comment. It names each column by its
 //     quantity and then its unit, with a space or an underscore between, or the
 //     unit in round or square brackets: "wavelength_nm", "Energy (eV)",
@@ -75,7 +76,7 @@ func (e *ParseError) Unwrap() error { return e.Err }
 // *ParseError, which wraps ErrInput; an error of r is returned as it is, wrapped.
 func ReadCSV(r io.Reader) (Table, error) {
 	sc := bufio.NewScanner(r)
-	sc.Buffer(make([]byte, 0, 4096), maxLine)
+	sc.Buffer(make([]byte, 0, 4096), maxLine+2)
 	p := parser{notes: map[string]bool{}}
 	for sc.Scan() {
 		p.line++
@@ -94,13 +95,13 @@ func ReadCSV(r io.Reader) (Table, error) {
 }
 
 // WriteCSV writes a table in the form that ReadCSV reads: comments with the
-// name, material, source and conditions, the header
-// wavelength_nm,n,k and if there are uncertainties alpha_uncertainty, rows
-// separated by commas, lines ended by LF. Every number has as many digits as
-// needed to read back the same float64. It returns the errors of Validate,
-// ErrInput for a text that a comment line cannot hold (line breaks and other
-// control characters, spaces at an end, not UTF-8, over 60,000 bytes) or more
-// than 1,000,000 rows, and the errors of w.
+// name, material, source and conditions, the header "wavelength_nm,n,k" with
+// ",alpha_uncertainty" if there are uncertainties, rows separated by commas,
+// lines ended by LF. Every number has as many digits as needed to read back the
+// same float64. It returns the errors of Validate, ErrInput for a text that a
+// comment line cannot hold (line breaks and other control characters, spaces at
+// an end, not UTF-8, over 60,000 bytes) or more than 1,000,000 rows, and the
+// errors of w.
 func WriteCSV(w io.Writer, t Table) error {
 	if err := t.Validate(); err != nil {
 		return err
@@ -113,7 +114,7 @@ func WriteCSV(w io.Writer, t Table) error {
 		if note.text == "" {
 			continue
 		}
-		if len(note.text) > 60_000 || !plainText(note.text) || strings.TrimSpace(note.text) != note.text {
+		if len(note.text) > maxNote || !plainText(note.text) || strings.TrimSpace(note.text) != note.text {
 			return fmt.Errorf("nk: csv: %s %.40q does not fit in a comment line: %w", note.key, note.text, ErrInput)
 		}
 		b.WriteString("# " + note.key + ": " + note.text + "\n")
@@ -158,8 +159,11 @@ func (p *parser) take(raw []byte) error {
 		raw = bytes.TrimPrefix(raw, []byte("\ufeff"))
 	}
 	p.text = string(raw)
-	if p.line > maxLines {
+	switch {
+	case p.line > maxLines:
 		return p.fault(-1, "more than %d lines", maxLines)
+	case len(raw) > maxLine:
+		return p.fault(-1, "longer than %d bytes", maxLine)
 	}
 	if !plainText(p.text) {
 		return p.fault(badText(p.text), "not UTF-8, or a control character; the file must be UTF-8 text")
@@ -213,8 +217,11 @@ func (p *parser) comment(text string) error {
 	if p.notes[key] {
 		return p.fault(-1, "the comment %q comes twice", key)
 	}
+	if value = strings.TrimSpace(value); len(value) > maxNote {
+		return p.fault(-1, "the comment %q is longer than %d bytes", key, maxNote)
+	}
 	p.notes[key] = true
-	*field = strings.TrimSpace(value)
+	*field = value
 	return nil
 }
 

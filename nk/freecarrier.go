@@ -28,10 +28,17 @@ type PowerLaw struct {
 }
 
 // CrossSection returns the absorption per density in cm² at a vacuum wavelength
-// in nm; NaN if the wavelength is not finite and positive.
+// in nm.
+//
+// Special cases: NaN if the wavelength or Unit is not finite and positive, the
+// Coefficient is negative or not finite, or the Exponent is not finite; +Inf if
+// the power overflows.
 func (p PowerLaw) CrossSection(lambda float64) float64 {
-	if !(lambda > 0) || math.IsInf(lambda, 1) {
+	if !(lambda > 0) || math.IsInf(lambda, 1) || !(p.Unit > 0) || math.IsInf(p.Unit, 1) || !amount(p.Coefficient) || math.IsInf(p.Exponent, 0) {
 		return math.NaN()
+	}
+	if p.Coefficient == 0 {
+		return 0
 	}
 	return p.Coefficient * math.Pow(lambda/p.Unit, p.Exponent)
 }
@@ -39,13 +46,22 @@ func (p PowerLaw) CrossSection(lambda float64) float64 {
 // Alpha returns the free-carrier absorption coefficient in 1/cm at a vacuum
 // wavelength in nm for densities of electrons and holes in 1/cm³.
 //
-// Special cases: NaN if the wavelength is not finite and positive, or a density
-// is negative, infinite or NaN.
+// Special cases: NaN if CrossSection is NaN for either kind, or a density is
+// negative, infinite or NaN; +Inf if the product overflows.
 func (f FreeCarriers) Alpha(lambda, electrons, holes float64) float64 {
-	if !amount(electrons) || !amount(holes) {
+	return absorptionOf(electrons, f.Electrons.CrossSection(lambda)) + absorptionOf(holes, f.Holes.CrossSection(lambda))
+}
+
+// absorptionOf is density times section, and zero without carriers even where
+// the section overflows.
+func absorptionOf(density, section float64) float64 {
+	switch {
+	case !amount(density) || math.IsNaN(section):
 		return math.NaN()
+	case density == 0:
+		return 0
 	}
-	return electrons*f.Electrons.CrossSection(lambda) + holes*f.Holes.CrossSection(lambda)
+	return density * section
 }
 
 // FreeCarriersSchroder1978 returns the parametrization of D. K. Schroder, R. N.

@@ -43,7 +43,7 @@ const (
 )
 
 // Interpolate fits the interpolation. It returns the errors of Validate, and
-// ErrInput if rows lie so close that a slope overflows.
+// ErrInput if the slope between two rows is not a finite number.
 //
 // n is interpolated by the monotone piecewise cubic of F. N. Fritsch and
 // J. Butland, SIAM J. Sci. Stat. Comput. 5, 300 (1984), and so is ln k wherever
@@ -89,7 +89,7 @@ func (t Table) Interpolate() (*Interpolant, error) {
 	for i := range ip.seg {
 		s := &ip.seg[i]
 		if sum := s.n1 + s.n2 + s.n3 + s.l1 + s.l2 + s.l3; math.IsNaN(sum) || math.IsInf(sum, 0) {
-			return nil, fmt.Errorf("nk: %s: rows %d and %d, at %g and %g nm, are too close for a slope: %w",
+			return nil, fmt.Errorf("nk: %s: no finite slope between rows %d and %d, at %g and %g nm: %w",
 				t.label(), i, i+1, ip.x[i], ip.x[i+1], ErrInput)
 		}
 	}

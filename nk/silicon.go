@@ -13,10 +13,14 @@ import (
 // of the published ones could be checked, so this package holds none.
 //
 // Special cases: NaN if a temperature is not finite and positive, x is negative
-// or infinite, or anything is NaN.
+// or infinite, the coefficient is infinite, or anything is NaN; 0 if x is 0; +Inf
+// if the result overflows.
 func ScaleTemperature(x, coefficient, t0, temperature float64) float64 {
-	if !amount(x) || !(t0 > 0) || !(temperature > 0) || math.IsInf(t0, 1) || math.IsInf(temperature, 1) || math.IsInf(coefficient, 0) {
-		return math.NaN()
+	if !amount(x) || !(t0 > 0) || !(temperature > 0) || math.IsInf(t0, 1) || math.IsInf(temperature, 1) || math.IsInf(coefficient, 0) || math.IsNaN(coefficient) {
+		return math.NaN() // math.Pow(1, NaN) would be 1
+	}
+	if x == 0 {
+		return 0
 	}
 	return x * math.Pow(temperature/t0, coefficient*t0)
 }
