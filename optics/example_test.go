@@ -13,9 +13,9 @@ func ExampleSolve() {
 	stack := optics.Stack{
 		Front: 1,
 		Films: []optics.Film{
-			{Index: 1.98, Thickness: 75},                                // silicon nitride
+			{Index: 1.98, Thickness: 75},                                   // silicon nitride
 			{Index: 3.572 + 5.093e-4i, Thickness: 160e3, Incoherent: true}, // silicon
-			{Index: 1.46, Thickness: 120},                               // silicon dioxide
+			{Index: 1.46, Thickness: 120},                                  // silicon dioxide
 		},
 		Back: 1.35 + 9.6i, // aluminium
 	}
