@@ -14,8 +14,9 @@ import (
 // with eps1 its exact Kramers-Kronig transform plus EpsInf. Source: A. S.
 // Ferlauto et al., J. Appl. Phys. 92, 2424 (2002). The transform is a closed
 // form (derived): partial fractions above Et (poles.go), exponential integrals
-// below. Accuracy about 1e-12 of the largest eps, 1e-11 where two poles of the
-// formula come close (Gamma near 2 E0, or Eg and Ep near those of the oscillator).
+// below. Accuracy about 1e-13 of |eps|; the derivatives have 1e-10 of the largest
+// one where Eg + iEp nearly meets the oscillator's pole (Ep near Gamma/2 and Eg²
+// near E0² - Gamma²/4), else 1e-12.
 // The slope of eps2 jumps at Et, so that the derivative of eps1 with respect to
 // Et has no finite value exactly at E = Et (ErrRange).
 type CodyLorentz struct {

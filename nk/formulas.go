@@ -30,7 +30,7 @@ func (p Published) Index(lambda float64) (complex128, error) {
 // Formula returns the published formula of that name, or ErrUnknown. The value
 // is the caller's own: its parameters may be changed.
 func Formula(name string) (Published, error) {
-	for _, f := range Formulas() {
+	for _, f := range published() {
 		if f.Name == name {
 			return f, nil
 		}
@@ -38,11 +38,17 @@ func Formula(name string) (Published, error) {
 	return Published{}, fmt.Errorf("nk: no formula named %q: %w", name, ErrUnknown)
 }
 
-// Formulas returns all published formulas, transparent materials first. The
-// values are the caller's own.
-func Formulas() []Published {
-	return append(sellmeierFormulas(), otherFormulas()...)
+// Formulas returns the names of all published formulas, transparent materials
+// first.
+func Formulas() []string {
+	var names []string
+	for _, f := range published() {
+		names = append(names, f.Name)
+	}
+	return names
 }
+
+func published() []Published { return append(sellmeierFormulas(), otherFormulas()...) }
 
 func sellmeierFormulas() []Published {
 	const (

@@ -162,7 +162,7 @@ func (r *rational) oscillatorPole(p *partial, q, twoA complex128) {
 	if r.cody {
 		num *= q * q
 		dnum += 2 / q
-		c = x*x + complex(r.ep*r.ep, 0)
+		c = (q - complex(r.eg, r.ep)) * (q - complex(r.eg, -r.ep))
 		cEg, cEp = -2*x/c, complex(2*r.ep, 0)/c
 	}
 	res := num / (twoA * complex(0, 2*r.g) * q * e2 * c)
@@ -183,7 +183,9 @@ func (r *rational) oscillatorPole(p *partial, q, twoA complex128) {
 func (r *rational) codyPole(p *partial) {
 	q := complex(r.eg, r.ep)
 	a := q*q - complex(r.e0*r.e0, 0)
-	d := a*a + complex(r.g*r.g, 0)*q*q
+	// The same differences of poles as in the other residues: their rounding
+	// then cancels with them.
+	d := (q - r.q1) * (q - r.q2) * (q - cmplx.Conj(r.q1)) * (q - cmplx.Conj(r.q2))
 	e2 := q*q - complex(r.e*r.e, 0)
 	res := complex(0, r.ep/2) * q * q / (d * e2)
 	low := complex(r.low, 0) - q

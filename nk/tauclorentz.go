@@ -12,7 +12,7 @@ import "math"
 // (1996). The transform is evaluated by partial fractions in the poles of the
 // oscillator (derived: see poles.go), which is the published closed form with
 // the erratum's signs where that is defined (C < 2 E0) and holds beyond.
-// Relative accuracy about 1e-13; 1e-11 for C within 0.02 % of 2 E0.
+// Accuracy about 1e-13 of |eps|, of the derivatives 1e-12 of the largest one.
 type TaucLorentz struct {
 	A      float64 // amplitude, eV, >= 0
 	E0     float64 // resonance energy, eV, > 0

@@ -1,0 +1,252 @@
+package nk
+
+import (
+	"fmt"
+	"math"
+	"math/cmplx"
+)
+
+const (
+	// fractionSlack is how far volume fractions may miss the sum 1: their own
+	// rounding. They are divided by their sum.
+	fractionSlack = 1e-9
+	// phaseSlack is the share of |eps| below which an imaginary part says
+	// nothing about the root: the square root of the rounding.
+	phaseSlack = 1e-8
+	// Indices outside these bounds are refused, so that no product overflows.
+	smallestIndex, largestIndex = 1e-50, 1e50
+)
+
+// Bruggeman returns the index N = n + ik of a mixture in which no component is
+// the host: spheres of every component in the mixture itself,
+//
+//	sum of f_i (eps_i - eps)/(eps_i + 2 eps) = 0
+//
+// Source: D. A. G. Bruggeman, Ann. Phys. 416, 636 (1935). n holds the indices of
+// the components, f their volume fractions 0..1 with the sum 1. The components
+// may be metals, also without loss. Of the roots it returns the physical one:
+// the limit, with the loss of all components going to its value from above, of
+// the only root with positive dissipation (derived: the root is an analytic
+// function of an added loss i delta, and for a large one all components are
+// alike). With a fraction of exactly 1 the result is exactly that component.
+//
+// ErrInput: lengths that differ or are 0, a fraction outside 0..1, a sum that is
+// not 1, an index that is zero (|N| < 1e-50), not finite (> 1e50), or has n < 0
+// or k < 0. ErrConvergence: three or more components without loss, exactly where
+// two real roots meet.
+func Bruggeman(n []complex128, f []float64) (complex128, error) {
+	total, only, err := checkMixture("Bruggeman", n, f)
+	if err != nil {
+		return 0, err
+	}
+	if only >= 0 {
+		return n[only], nil
+	}
+	var eps complex128
+	if a, b, ok := twoParts(f); ok {
+		eps = bruggemanTwo(n[a]*n[a], n[b]*n[b], f[a]/total)
+	} else if eps, err = bruggemanMany(n, f, total); err != nil {
+		return 0, err
+	}
+	return mixtureIndex("Bruggeman", eps)
+}
+
+// twoParts finds the components with a fraction; ok if there are two.
+func twoParts(f []float64) (a, b int, ok bool) {
+	a, b = -1, -1
+	for i, v := range f {
+		switch {
+		case v == 0:
+		case a < 0:
+			a = i
+		case b < 0:
+			b = i
+		default:
+			return a, b, false
+		}
+	}
+	return a, b, b >= 0
+}
+
+// bruggemanTwo is the root of 2 eps² - q eps - e1 e2 = 0 with
+// q = (3 f1 - 1) e1 + (3 f2 - 1) e2.
+//
+// Derived: the physical root lies in the cone that e1 and e2 span in the upper
+// half plane; the other, -e1 e2/(2 eps), lies in the opposite cone. Turned so
+// that the cone is around the positive axis, the real parts tell them apart.
+// Without loss (one e negative) both may be real: then the physical one is the
+// one that gains loss when both components do, d eps/d delta > 0 with
+// d eps/d delta = (eps + e1 + e2)/(4 eps - q).
+func bruggemanTwo(e1, e2 complex128, f1 float64) complex128 {
+	scale := max(cmplx.Abs(e1), cmplx.Abs(e2))
+	e1, e2 = e1/complex(scale, 0), e2/complex(scale, 0)
+	q := complex(3*f1-1, 0)*e1 + complex(2-3*f1, 0)*e2
+	s := cmplx.Sqrt(q*q + 8*e1*e2)
+	a := (q + s) / 4
+	if cmplx.Abs(q-s) > cmplx.Abs(q+s) {
+		a = (q - s) / 4
+	}
+	b := -e1 * e2 / (2 * a) // the smaller root without cancellation
+	turn := cmplx.Rect(1, -(cmplx.Phase(e1)+cmplx.Phase(e2))/2)
+	ra, rb := real(a*turn)/cmplx.Abs(a), real(b*turn)/cmplx.Abs(b)
+	best := a
+	if max(math.Abs(ra), math.Abs(rb)) < phaseSlack {
+		if real((b+e1+e2)/(4*b-q)) > real((a+e1+e2)/(4*a-q)) {
+			best = b
+		}
+	} else if rb > ra {
+		best = b
+	}
+	return best * complex(scale, 0)
+}
+
+// bruggemanMany follows the root from a large loss added to all components down
+// to none, by Newton's method. eps is analytic in the added loss as long as it
+// is positive, and varies over a distance of the loss itself, so steps by a
+// factor of two are small.
+func bruggemanMany(n []complex128, f []float64, total float64) (complex128, error) {
+	scale := 0.0
+	var mean complex128
+	for i, v := range n {
+		if f[i] > 0 {
+			scale = max(scale, cmplx.Abs(v*v))
+			mean += complex(f[i]/total, 0) * v * v
+		}
+	}
+	// residual returns sum of f (e - y)/(e + 2y), its derivative with respect
+	// to y, and that with respect to a shift of all e, all times the scale.
+	residual := func(y complex128, t float64) (g, gy, ge complex128) {
+		for i, v := range n {
+			if f[i] == 0 {
+				continue
+			}
+			e := v*v/complex(scale, 0) + complex(0, t)
+			w, d := complex(f[i]/total, 0), 1/(e+2*y)
+			g += w * (e - y) * d
+			gy -= 3 * w * e * d * d
+			ge += 3 * w * y * d * d
+		}
+		return g, gy, ge
+	}
+	const start, end = 1e4, 1e-17
+	t := start
+	y := mean/complex(scale, 0) + complex(0, t)
+	ratio := 0.5
+	for steps := 0; steps < 10000; steps++ {
+		_, gy, ge := residual(y, t)
+		next := t * ratio
+		if next < end {
+			next = 0
+		}
+		z := y - ge/gy*complex(0, next-t)
+		ok := false
+		for range 30 {
+			g, gz, _ := residual(z, next)
+			dz := g / gz
+			z -= dz
+			if cmplx.Abs(dz) <= 4e-16*cmplx.Abs(z) {
+				ok = true
+				break
+			}
+		}
+		// At the very end rounding may keep the last step above the test.
+		if g, gz, _ := residual(z, next); !ok && cmplx.Abs(g/gz) < 1e-13*cmplx.Abs(z) {
+			ok = true
+		}
+		if !ok || (next > 0 && imag(z) <= 0) || cmplx.IsNaN(z) {
+			if ratio = math.Sqrt(ratio); ratio > 0.999 {
+				break
+			}
+			continue
+		}
+		if next == 0 {
+			return z * complex(scale, 0), nil
+		}
+		y, t, ratio = z, next, max(0.5, ratio*ratio)
+	}
+	return 0, fmt.Errorf("nk: Bruggeman: no root found for %d components: %w", len(n), ErrConvergence)
+}
+
+// MaxwellGarnett returns the index N = n + ik of spheres of the index inclusion
+// in a host, with the volume fraction f of the inclusions:
+//
+//	(eps - eps_h)/(eps + 2 eps_h) = f (eps_i - eps_h)/(eps_i + 2 eps_h)
+//
+// Source: J. C. Maxwell Garnett, Phil. Trans. R. Soc. A 203, 385 (1904). It is
+// meant for small f; f = 0 and f = 1 give exactly host and inclusion.
+// ErrInput: f outside 0..1, an index that is zero, not finite, or has n < 0 or
+// k < 0. ErrRange: at the undamped resonance the result is infinite.
+func MaxwellGarnett(host, inclusion complex128, f float64) (complex128, error) {
+	_, only, err := checkMixture("Maxwell Garnett", []complex128{host, inclusion}, []float64{1 - f, f})
+	if err != nil {
+		return 0, err
+	}
+	switch only {
+	case 0:
+		return host, nil
+	case 1:
+		return inclusion, nil
+	}
+	eh, ei := host*host, inclusion*inclusion
+	w := complex(f, 0)
+	return mixtureIndex("Maxwell Garnett", eh*((1+2*w)*ei+(2-2*w)*eh)/((1-w)*ei+(2+w)*eh))
+}
+
+// LorentzLorenz returns the index N = n + ik of a mixture whose components keep
+// their polarisability per volume in vacuum:
+//
+//	(eps - 1)/(eps + 2) = sum of f_i (eps_i - 1)/(eps_i + 2)
+//
+// Sources: H. A. Lorentz, Ann. Phys. 245, 641 (1880), L. Lorenz, Ann. Phys. 247,
+// 70 (1880). n holds the indices, f the volume fractions 0..1 with the sum 1; a
+// pore is a component of index 1. A fraction of exactly 1 gives exactly that
+// component. ErrInput as in Bruggeman; ErrRange where the result is infinite.
+func LorentzLorenz(n []complex128, f []float64) (complex128, error) {
+	total, only, err := checkMixture("Lorentz-Lorenz", n, f)
+	if err != nil {
+		return 0, err
+	}
+	if only >= 0 {
+		return n[only], nil
+	}
+	var l complex128
+	for i, v := range n {
+		e := v * v
+		l += complex(f[i]/total, 0) * ((e - 1) / (e + 2))
+	}
+	return mixtureIndex("Lorentz-Lorenz", (1+2*l)/(1-l))
+}
+
+// mixtureIndex is the root of a permittivity that may miss the real axis by
+// rounding.
+func mixtureIndex(model string, eps complex128) (complex128, error) {
+	if !finite(eps) || eps == 0 || imag(eps) < -phaseSlack*cmplx.Abs(eps) {
+		return 0, fmt.Errorf("nk: %s: permittivity %g: %w", model, eps, ErrRange)
+	}
+	return cmplx.Sqrt(complex(real(eps), max(0, imag(eps)))), nil
+}
+
+// checkMixture tests components and fractions; it returns the sum of the
+// fractions and the component that has a fraction of 1, or -1.
+func checkMixture(model string, n []complex128, f []float64) (total float64, only int, err error) {
+	if len(n) == 0 || len(n) != len(f) {
+		return 0, 0, fmt.Errorf("nk: %s: %d indices and %d fractions: %w", model, len(n), len(f), ErrInput)
+	}
+	only = -1
+	for i, v := range n {
+		if a := cmplx.Abs(v); !(a >= smallestIndex && a <= largestIndex) || real(v) < 0 || imag(v) < 0 {
+			return 0, 0, fmt.Errorf("nk: %s: component %d: index %g: %w", model, i, v, ErrInput)
+		}
+		if !(f[i] >= 0 && f[i] <= 1) {
+			return 0, 0, fmt.Errorf("nk: %s: component %d: fraction %g: %w", model, i, f[i], ErrInput)
+		}
+		total += f[i]
+		if f[i] == 1 {
+			only = i
+		}
+	}
+	if math.Abs(total-1) > fractionSlack {
+		return 0, 0, fmt.Errorf("nk: %s: the fractions add up to %g: %w", model, total, ErrInput)
+	}
+	return total, only, nil
+}
