@@ -4,95 +4,104 @@ import (
 	"fmt"
 	"math"
 	"testing"
+	"time"
 )
 
-// BenchmarkGradient compares one stack at 45 degrees, unpolarised, with
-// and without the derivatives by every thickness, n and k.
-func BenchmarkGradient(b *testing.B) {
-	for _, films := range []int{5, 20} {
-		s := workload(films, 45*math.Pi/180)
-		w := len(s.Wavelength)
-		stacks := make([]Stack, w)
-		for i := range stacks {
-			st := Stack{Front: 1, Back: complex(s.BackN[i], s.BackK[i])}
-			for j, d := range s.Thickness {
-				st.Films = append(st.Films, Film{Index: complex(s.N[j*w+i], s.K[j*w+i]), Thickness: d})
-			}
-			stacks[i] = st
+// pace runs both functions in turn, so that they meet the same machine, and
+// reports the time of each per unit and their ratio.
+func pace(b *testing.B, units float64, forward, gradient func() error) {
+	b.ReportAllocs()
+	var first, second time.Duration
+	for b.Loop() {
+		t0 := time.Now()
+		err := forward()
+		t1 := time.Now()
+		if err == nil {
+			err = gradient()
 		}
-		weights := Weights{R: 1, A: make([]float64, films)}
-		weights.A[films/2] = -1
-		b.Run(fmt.Sprintf("films=%d/forward", films), func(b *testing.B) {
-			var sv Solver
-			var r Response
-			b.ReportAllocs()
-			i := 0
-			for b.Loop() {
-				if err := sv.Solve(&r, stacks[i], Wave{Wavelength: s.Wavelength[i], Angle: s.Angle[0]}); err != nil {
-					b.Fatal(err)
+		first += t1.Sub(t0)
+		second += time.Since(t1)
+		if err != nil {
+			b.Fatal(err)
+		}
+	}
+	b.ReportMetric(float64(first.Nanoseconds())/float64(b.N)/units, "forward-ns/film")
+	b.ReportMetric(float64(second.Nanoseconds())/float64(b.N)/units, "gradient-ns/film")
+	b.ReportMetric(float64(second)/float64(first), "ratio")
+}
+
+// BenchmarkGradient compares one stack at a time without and with the
+// derivatives by every thickness, n and k, for 50 wavelengths in turn; ns per
+// film, wavelength and polarisation.
+func BenchmarkGradient(b *testing.B) {
+	const count = 50
+	for _, films := range []int{5, 20} {
+		for _, angle := range []float64{0, 45} {
+			b.Run(fmt.Sprintf("films=%d/angle=%g", films, angle), func(b *testing.B) {
+				s := workload(films, angle*math.Pi/180)
+				w, pols := len(s.Wavelength), 2.0
+				if angle == 0 {
+					pols = 1
 				}
-				if i++; i == w {
-					i = 0
+				var stacks [count]Stack
+				var waves [count]Wave
+				for i := range stacks {
+					at := i * w / count
+					waves[i] = Wave{Wavelength: s.Wavelength[at], Angle: s.Angle[0]}
+					stacks[i] = Stack{Front: 1, Back: complex(s.BackN[at], s.BackK[at])}
+					for j, d := range s.Thickness {
+						stacks[i].Films = append(stacks[i].Films, Film{Index: complex(s.N[j*w+at], s.K[j*w+at]), Thickness: d})
+					}
 				}
-			}
-		})
-		b.Run(fmt.Sprintf("films=%d/gradient", films), func(b *testing.B) {
-			var sv GradientSolver
-			var r Response
-			var g Gradient
-			b.ReportAllocs()
-			i := 0
-			for b.Loop() {
-				if err := sv.Solve(&g, &r, stacks[i], Wave{Wavelength: s.Wavelength[i], Angle: s.Angle[0]}, weights); err != nil {
-					b.Fatal(err)
+				weights := Weights{R: 1, A: make([]float64, films)}
+				weights.A[films/2] = -1
+				var sv Solver
+				var gs GradientSolver
+				var r Response
+				var g Gradient
+				forward := func() error {
+					for i := range stacks {
+						if err := sv.Solve(&r, stacks[i], waves[i]); err != nil {
+							return err
+						}
+					}
+					return nil
 				}
-				if i++; i == w {
-					i = 0
+				gradient := func() error {
+					for i := range stacks {
+						if err := gs.Solve(&g, &r, stacks[i], waves[i], weights); err != nil {
+							return err
+						}
+					}
+					return nil
 				}
-			}
-		})
+				pace(b, count*float64(films)*pols, forward, gradient)
+			})
+		}
 	}
 }
 
-// BenchmarkGradientSweep is the same for sweeps over 1000 wavelengths with all
-// weights set, in ns per film, wavelength and polarisation.
+// BenchmarkGradientSweep does the same for sweeps over 1000 wavelengths.
 func BenchmarkGradientSweep(b *testing.B) {
 	const films = 20
 	for _, angle := range []float64{0, 45} {
-		s := workload(films, angle*math.Pi/180)
-		pols := 2.0
-		if angle == 0 {
-			pols = 1
-		}
-		per := func(b *testing.B) {
-			b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/(films*float64(len(s.Wavelength))*pols), "ns/film")
-		}
-		b.Run(fmt.Sprintf("films=%d/angle=%g/forward", films, angle), func(b *testing.B) {
-			var sw Sweeper
-			var r SweepResponse
-			b.ReportAllocs()
-			for b.Loop() {
-				if err := sw.Run(&r, &s); err != nil {
-					b.Fatal(err)
-				}
+		b.Run(fmt.Sprintf("films=%d/angle=%g", films, angle), func(b *testing.B) {
+			s := workload(films, angle*math.Pi/180)
+			w, pols := len(s.Wavelength), 2.0
+			if angle == 0 {
+				pols = 1
 			}
-			per(b)
-		})
-		b.Run(fmt.Sprintf("films=%d/angle=%g/gradient", films, angle), func(b *testing.B) {
-			var sw GradientSweeper
+			weights := SweepWeights{R: make([]float64, w), A: make([]float64, films*w)}
+			for i := range weights.R {
+				weights.R[i], weights.A[i+films/2*w] = 1, -1
+			}
+			var sw Sweeper
+			var gs GradientSweeper
 			var r SweepResponse
 			var g SweepGradient
-			weights := SweepWeights{R: make([]float64, len(s.Wavelength)), A: make([]float64, films*len(s.Wavelength))}
-			for i := range weights.R {
-				weights.R[i], weights.A[i] = 1, -1
-			}
-			b.ReportAllocs()
-			for b.Loop() {
-				if err := sw.Run(&g, &r, &s, &weights); err != nil {
-					b.Fatal(err)
-				}
-			}
-			per(b)
+			pace(b, films*float64(w)*pols,
+				func() error { return sw.Run(&r, &s) },
+				func() error { return gs.Run(&g, &r, &s, &weights) })
 		})
 	}
 }

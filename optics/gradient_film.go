@@ -3,36 +3,37 @@ package optics
 import "math"
 
 // slopeRow holds the matrix (C, S/η; Sη, C) of one film for one polarisation
-// and one block, and its derivative with respect to ε. Every entry carries the
-// factor exp(-y), which is not differentiated.
+// and one block, and what its derivatives need.
 //
 // derived: with H = (0, x; y, 0), x = 1 and y = q² for s, x = q²/ε and y = ε
-// for p, the matrix is exp(-i k0 d H). Hence d/dd multiplies it by -i k0 H,
-// and with σ = S/q, dq²/dε = 1:
+// for p, the matrix is exp(-i k0 d H), without the factor exp(-y). Hence d/dd
+// multiplies it by -i k0 H. A change of q² turns the phase φ = k0 d q, which
+// multiplies it by -i k0 d H/(2q²), and changes η; with σ = S/q and dq²/dε = 1
+// the latter adds
 //
-//	dC/dq²     = -i k0 d σ/2
-//	dσ/dq²     = -(i k0 d C + σ)/(2q²)
-//	d(σq²)/dq² = (σ - i k0 d C)/2
+//	s: σ/2 to d(Sη)/dε,            -σ/(2q²) to d(S/η)/dε,
+//	p: σ (1 - ε/(2q²)),             (σ/ε)(1/2 - q²/ε).
 type slopeRow struct {
-	cr, ci [lanes]float64 // C
-	ar, ai [lanes]float64 // S/η
-	br, bi [lanes]float64 // Sη
-	xr, xi [lanes]float64 // x of the generator
-	yr, yi [lanes]float64 // y
-	e      [lanes]float64 // determinant, exp(-2y)
-
-	dcr, dci [lanes]float64 // dC/dε
-	dar, dai [lanes]float64 // d(S/η)/dε
-	dbr, dbi [lanes]float64 // d(Sη)/dε
-
-	// U dV - V dU in front of the film for dε = 1 is uu U² + uv UV + vv V² with
-	// the fields behind it.
-	uur, uui [lanes]float64
-	uvr, uvi [lanes]float64
-	vvr, vvi [lanes]float64
+	cr, ci   [lanes]float64 // C
+	ar, ai   [lanes]float64 // S/η
+	br, bi   [lanes]float64 // Sη
+	xr, xi   [lanes]float64 // x of the generator
+	yr, yi   [lanes]float64 // y
+	uur, uui [lanes]float64 // part of d(Sη)/dε
+	vvr, vvi [lanes]float64 // part of d(S/η)/dε
+	e        [lanes]float64 // determinant, exp(-2y)
 }
 
-// smallPhase is |k0 d q|² below which dσ/dq² is taken from its series.
+// turnRow is the part of the derivative with respect to ε that is the same
+// for both polarisations.
+type turnRow struct {
+	kd     [lanes]float64 // k0 d
+	gr, gi [lanes]float64 // 1/(2q²), or zero where the phase is small
+	cr, ci [lanes]float64 // dC/dε where the phase is small
+}
+
+// smallPhase is |k0 d q|² below which the two parts of dσ/dq² would cancel and
+// its series is used instead.
 const smallPhase = 0.25
 
 // phaseSeries returns (φ cos φ - sin φ)/φ³ for z = φ², |z| < smallPhase:
@@ -54,107 +55,90 @@ func phaseSeries(z complex128) complex128 {
 	return s
 }
 
-// bulkSlope is what the slopes of both polarisations have in common in one
-// lane.
-type bulkSlope struct {
-	c, sigma, kappa complex128
-	dc, dsigma      complex128 // dC/dq², dσ/dq²
-	db              complex128 // d(σq²)/dq²
-	cs              complex128 // Cσ
-	p, q, r         complex128 // see fill
-}
-
 // trace finds the phase factors of the film once more, as the forward pass
-// did, into f; e receives exp(-2y).
-func (f *filmRow) trace(w *waveRow, n, k []float64, d float64, normal bool, e []float64) {
-	b := min(len(n), lanes)
+// did.
+func (rv *reversal) trace(w *waveRow, n, k []float64, d float64) {
+	f, b := &rv.film, len(n)
+	if b > lanes {
+		b = lanes
+	}
 	n, k = n[:b], k[:b]
 	for i := range n {
-		qr, qi, kr := n[i], k[i], (n[i]-k[i])*(n[i]+k[i])
-		if !normal {
+		var qr, qi, kr float64
+		if rv.normal {
+			qr, qi, kr = n[i], k[i], (n[i]-k[i])*(n[i]+k[i])
+		} else {
 			qr, qi, kr = normalWave(n[i], k[i], w.n0[i], w.q0sq[i])
 		}
 		kd := w.k0[i] * d
 		f.qr[i], f.qi[i], f.kr[i] = qr, qi, kr
 		f.phase[i], f.decay[i] = kd*qr, -2*kd*qi
+		rv.turn.kd[i] = kd
 	}
 	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
 	f.correctPhase(w, n, k, d)
-	expRow(e[:b], f.m[:b], f.decay[:b])
+	expRow(rv.slope[0].e[:b], f.m[:b], f.decay[:b])
+	rv.slope[1].e = rv.slope[0].e
 }
 
-// at returns the slopes of lane i. kd is k0 d, kappaIm is Im q², e is exp(-2y).
-//
-// derived: for s the form uu U² + uv UV + vv V² has uu = p, uv = q, vv = r with
-// p = (Cσ - i k0 d e)/2, q = σ², r = (Cσ + i k0 d e)/(2q²), because
-// C² - S² = e; a thick film loses no digits in it.
-func (f *filmRow) at(i int, kd, kappaIm, e float64) bulkSlope {
-	h := 0.5 * f.m[i]
-	p := 1 - h
-	qr, qi := f.qr[i], f.qi[i]
-	iq := 1 / (qr*qr + qi*qi)
-	sr, si := f.cos[i]*h, -f.sin[i]*p
-	s := bulkSlope{
-		c:     complex(f.cos[i]*p, -f.sin[i]*h),
-		sigma: complex((sr*qr+si*qi)*iq, (si*qr-sr*qi)*iq),
-		kappa: complex(f.kr[i], kappaIm),
+// slopes fills the rows of the polarisations in use.
+func (rv *reversal) slopes(n, k []float64) {
+	f, t, s, p := &rv.film, &rv.turn, &rv.slope[0], &rv.slope[1]
+	b := len(n)
+	if b > lanes {
+		b = lanes
 	}
-	c, sigma := s.c, s.sigma
-	turn := complex(-kd*imag(c), kd*real(c)) // i k0 d C
-	s.dc = complex(0.5*kd*imag(sigma), -0.5*kd*real(sigma))
-	s.db = complex(0.5*(real(sigma)-real(turn)), 0.5*(imag(sigma)-imag(turn)))
-	s.cs = c * sigma
-	s.q = sigma * sigma
-	s.p = complex(0.5*real(s.cs), 0.5*(imag(s.cs)-kd*e))
-	if kd*kd < smallPhase*iq {
-		g := phaseSeries(s.kappa * complex(kd*kd, 0))
-		scale := 0.5 * kd * kd * kd * math.Sqrt(e)
-		s.dsigma = complex(scale*imag(g), -scale*real(g))
-		s.r = sigma*s.dc - c*s.dsigma
-		return s
+	n, k = n[:b], k[:b]
+	for i := range n {
+		h := 0.5 * f.m[i]
+		g := 1 - h
+		cr, ci := f.cos[i]*g, -f.sin[i]*h
+		sr, si := f.cos[i]*h, -f.sin[i]*g
+		qr, qi, kr, ki := f.qr[i], f.qi[i], f.kr[i], 2*n[i]*k[i]
+		iq := 1 / (qr*qr + qi*qi)
+		ar, ai := (sr*qr+si*qi)*iq, (si*qr-sr*qi)*iq
+		br, bi := ar*kr-ai*ki, ar*ki+ai*kr
+		hr, hi := 0.5*kr*iq*iq, -0.5*ki*iq*iq // 1/(2q²)
+		s.cr[i], s.ci[i], s.ar[i], s.ai[i], s.br[i], s.bi[i] = cr, ci, ar, ai, br, bi
+		s.xr[i], s.xi[i], s.yr[i], s.yi[i] = 1, 0, kr, ki
+		s.uur[i], s.uui[i] = 0.5*ar, 0.5*ai
+		s.vvr[i], s.vvi[i] = ai*hi-ar*hr, -ar*hi-ai*hr
+		t.gr[i], t.gi[i] = hr, hi
+		if t.kd[i]*t.kd[i] < smallPhase*iq {
+			rv.smallPhase(i, complex(kr, ki), complex(cr, ci), complex(ar, ai))
+		}
 	}
-	half := complex(0.5*real(s.kappa)*iq*iq, -0.5*imag(s.kappa)*iq*iq) // 1/(2q²)
-	s.dsigma = -(turn + sigma) * half
-	s.r = complex(real(s.cs), imag(s.cs)+kd*e) * half
-	return s
+	if !rv.use[1] {
+		return
+	}
+	p.cr, p.ci = s.cr, s.ci
+	for i := range n {
+		er, ei := (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i]
+		ie := 1 / (er*er + ei*ei)
+		ir, ii := er*ie, -ei*ie // 1/ε
+		ar, ai, br, bi := s.ar[i], s.ai[i], s.br[i], s.bi[i]
+		xr, xi := s.yr[i]*ir-s.yi[i]*ii, s.yr[i]*ii+s.yi[i]*ir
+		pr, pi := br*ir-bi*ii, br*ii+bi*ir
+		p.xr[i], p.xi[i], p.yr[i], p.yi[i] = xr, xi, er, ei
+		p.ar[i], p.ai[i] = pr, pi
+		p.br[i], p.bi[i] = ar*er-ai*ei, ar*ei+ai*er
+		// S/η and Sη are those of s exchanged, divided and multiplied by ε.
+		ur, ui, vr, vi := s.uur[i]-pr, s.uui[i]-pi, s.vvr[i], s.vvi[i]
+		p.uur[i], p.uui[i] = ar+vr*er-vi*ei, ai+vr*ei+vi*er
+		p.vvr[i], p.vvi[i] = ur*ir-ui*ii, ur*ii+ui*ir
+	}
 }
 
-// setS stores the slopes of s light in lane i.
-func (o *slopeRow) setS(i int, s *bulkSlope) {
-	b := s.sigma * s.kappa
-	o.cr[i], o.ci[i] = real(s.c), imag(s.c)
-	o.ar[i], o.ai[i] = real(s.sigma), imag(s.sigma)
-	o.br[i], o.bi[i] = real(b), imag(b)
-	o.xr[i], o.xi[i] = 1, 0
-	o.yr[i], o.yi[i] = real(s.kappa), imag(s.kappa)
-	o.dcr[i], o.dci[i] = real(s.dc), imag(s.dc)
-	o.dar[i], o.dai[i] = real(s.dsigma), imag(s.dsigma)
-	o.dbr[i], o.dbi[i] = real(s.db), imag(s.db)
-	o.uur[i], o.uui[i] = real(s.p), imag(s.p)
-	o.uvr[i], o.uvi[i] = real(s.q), imag(s.q)
-	o.vvr[i], o.vvi[i] = real(s.r), imag(s.r)
-}
-
-// setP stores the slopes of p light in lane i; eps is the permittivity, inv
-// its reciprocal.
+// smallPhase replaces the slopes of s light in lane i by the whole derivatives:
 //
-// derived: for p S/η = σq²/ε and Sη = σε exchange their places with s, and
-// depend on ε once more by the factor, so uu = Cσ - ε r,
-// uv = σ² (2q²/ε - 1), vv = (Cσ q²/ε - p)/ε.
-func (o *slopeRow) setP(i int, s *bulkSlope, eps, inv complex128) {
-	x := s.kappa * inv
-	a, b := s.sigma*x, s.sigma*eps
-	da, db := (s.db-a)*inv, s.dsigma*eps+s.sigma
-	uu, uv, vv := s.cs-eps*s.r, s.q*(2*x-1), (s.cs*x-s.p)*inv
-	o.cr[i], o.ci[i] = real(s.c), imag(s.c)
-	o.ar[i], o.ai[i] = real(a), imag(a)
-	o.br[i], o.bi[i] = real(b), imag(b)
-	o.xr[i], o.xi[i] = real(x), imag(x)
-	o.yr[i], o.yi[i] = real(eps), imag(eps)
-	o.dcr[i], o.dci[i] = real(s.dc), imag(s.dc)
-	o.dar[i], o.dai[i] = real(da), imag(da)
-	o.dbr[i], o.dbi[i] = real(db), imag(db)
-	o.uur[i], o.uui[i] = real(uu), imag(uu)
-	o.uvr[i], o.uvi[i] = real(uv), imag(uv)
-	o.vvr[i], o.vvi[i] = real(vv), imag(vv)
+//	dC/dq² = -i k0 d σ/2,  dσ/dq² = -(i k0 d C + σ)/(2q²),  d(σq²)/dq² = (σ - i k0 d C)/2.
+func (rv *reversal) smallPhase(i int, kappa, c, sigma complex128) {
+	t, s := &rv.turn, &rv.slope[0]
+	kd := t.kd[i]
+	series := phaseSeries(kappa * complex(kd*kd, 0))
+	scale := 0.5 * kd * kd * kd * math.Sqrt(s.e[i])
+	t.gr[i], t.gi[i] = 0, 0
+	t.cr[i], t.ci[i] = 0.5*kd*imag(sigma), -0.5*kd*real(sigma)
+	s.uur[i], s.uui[i] = 0.5*(real(sigma)+kd*imag(c)), 0.5*(imag(sigma)-kd*real(c))
+	s.vvr[i], s.vvi[i] = scale*imag(series), -scale*real(series)
 }

@@ -30,9 +30,8 @@ import "math"
 
 // pullRow is the state of the walk for one polarisation.
 type pullRow struct {
-	dur, dui, dvr, dvi [lanes]float64 // D^u, D^v
+	dur, dui, dvr, dvi [lanes]float64 // D^u/D, D^v/D
 	wr, wi             [lanes]float64 // W
-	ir, ii             [lanes]float64 // 1/D
 	gain               [lanes]float64 // G
 	rest               []float64      // [film*lanes+lane]: sum of w a over this film and all behind, with w_t t
 }
@@ -61,20 +60,8 @@ func (rv *reversal) pull(g *group, w *waveRow, films *filmTable, wt *[2]groupWei
 	for j := range g.count {
 		film := g.first + j*g.step
 		n, k := films.row(film, b)
-		rv.film.trace(w, n, k, films.d[film], rv.normal, rv.e[:b])
-		for i := range n {
-			er, ei := (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i]
-			s := rv.film.at(i, w.k0[i]*films.d[film], ei, rv.e[i])
-			if rv.use[0] {
-				rv.slope[0].e[i] = rv.e[i]
-				rv.slope[0].setS(i, &s)
-			}
-			if rv.use[1] {
-				rv.slope[1].e[i] = rv.e[i]
-				inv := 1 / (er*er + ei*ei)
-				rv.slope[1].setP(i, &s, complex(er, ei), complex(er*inv, -ei*inv))
-			}
-		}
+		rv.trace(w, n, k, films.d[film])
+		rv.slopes(n, k)
 		for p := range 2 {
 			if rv.use[p] {
 				rv.step(g, w, p, j, film, b, &wt[p])
@@ -125,7 +112,7 @@ func (rv *reversal) begin(g *group, p int, wt *groupWeights, b int) {
 	ur, ui, vr, vi := g.fields[0].polarized(p)
 	for i := range b {
 		s.dur[i], s.dui[i], s.dvr[i], s.dvi[i] = 0, 0, 0, 0
-		s.wr[i], s.wi[i], s.ir[i], s.ii[i], s.gain[i] = 0, 0, 0, 0, 0
+		s.wr[i], s.wi[i], s.gain[i] = 0, 0, 0
 		if wt.flux[i] == 0 || g.g[p][i] == 0 {
 			continue
 		}
@@ -134,9 +121,9 @@ func (rv *reversal) begin(g *group, p int, wt *groupWeights, b int) {
 		// With D fixed the amplitude r changes by -2hlω/D².
 		dr := complex(wt.r[i]*g.rr[p][i], wt.d[i]*g.in.interfere(i, p)-wt.r[i]*g.ri[p][i])
 		pull := -4 * h * l * inv * inv * dr
+		h, l = h*inv, l*inv
 		s.dur[i], s.dui[i], s.dvr[i], s.dvi[i] = real(h), imag(h), real(l), imag(l)
 		s.wr[i], s.wi[i] = real(pull), imag(pull)
-		s.ir[i], s.ii[i] = real(inv), imag(inv)
 		s.gain[i] = g.g[p][i]
 	}
 }
@@ -165,91 +152,96 @@ func (s *pullRow) end(f *fieldRow, p int, wt *groupWeights, b int) {
 	ur, ui, vr, vi := f.polarized(p)
 	for i := range b {
 		c := wt.t[i] * s.gain[i]
-		kr := s.dur[i]*ur[i] + s.dui[i]*ui[i] - s.dvr[i]*vr[i] - s.dvi[i]*vi[i]
-		ki := s.dui[i]*ur[i] - s.dur[i]*ui[i] - s.dvi[i]*vr[i] + s.dvr[i]*vi[i]
-		s.wr[i] += c * (kr*s.ir[i] - ki*s.ii[i])
-		s.wi[i] += c * (kr*s.ii[i] + ki*s.ir[i])
+		s.wr[i] += c * (s.dur[i]*ur[i] + s.dui[i]*ui[i] - s.dvr[i]*vr[i] - s.dvi[i]*vi[i])
+		s.wi[i] += c * (s.dui[i]*ur[i] - s.dur[i]*ui[i] - s.dvi[i]*vr[i] + s.dvr[i]*vi[i])
 	}
 }
 
+// thickPhase is k0 d above which the phase of an absorbing film is kept out
+// of a difference that would show its rounding.
+const thickPhase = 1000
+
 // step takes the walk from the front of film j of the group to its back and
-// adds the derivatives of the film.
+// adds the derivatives of the film: everything that depends on its front is
+// Re(α dU + β dV) with the fields there.
 func (rv *reversal) step(g *group, w *waveRow, p, j, film, b int, wt *groupWeights) {
-	s, o := &rv.walk[p], &rv.slope[p]
+	s, o, t := &rv.walk[p], &rv.slope[p], &rv.turn
 	if g.scaled[j] {
-		o.rescale(g.scale[(2*j+p)*lanes:][:b])
+		rv.rescale(p, g.scale[(2*j+p)*lanes:][:b])
 	}
 	gur, gui, gvr, gvi := g.fields[j].polarized(p)
 	fur, fui, fvr, fvi := g.fields[j+1].polarized(p)
 	at := film * lanes
-	b = min(b, lanes)
+	if b > lanes {
+		b = lanes
+	}
 	dd, xr, xi := rv.dd[at:at+b], rv.xr[at:at+b], rv.xi[at:at+b]
 	rest, weight := s.rest[j*lanes:j*lanes+b], rv.a[p][at:at+b]
 	for i := range dd {
-		ur, ui, vr, vi := fur[i], fui[i], fvr[i], fvi[i]
 		dur, dui, dvr, dvi := s.dur[i], s.dui[i], s.dvr[i], s.dvi[i]
-		wr, wi, ir, ii := s.wr[i], s.wi[i], s.ir[i], s.ii[i]
-		xxr, xxi, yr, yi := o.xr[i], o.xi[i], o.yr[i], o.yi[i]
-		k0, e := w.k0[i], o.e[i]
-
-		// ω per dε and, without -i k0, per thickness.
-		uur, uui := ur*ur-ui*ui, 2*ur*ui
-		uvr, uvi := ur*vr-ui*vi, ur*vi+ui*vr
-		vvr, vvi := vr*vr-vi*vi, 2*vr*vi
-		omr := o.uur[i]*uur - o.uui[i]*uui + o.uvr[i]*uvr - o.uvi[i]*uvi + o.vvr[i]*vvr - o.vvi[i]*vvi
-		omi := o.uur[i]*uui + o.uui[i]*uur + o.uvr[i]*uvi + o.uvi[i]*uvr + o.vvr[i]*vvi + o.vvi[i]*vvr
-		tr := e * (yr*uur - yi*uui - xxr*vvr + xxi*vvi)
-		ti := e * (yr*uui + yi*uur - xxr*vvi - xxi*vvr)
-
-		// dU, dV and dD per dε.
-		dcr, dci := o.dcr[i], o.dci[i]
-		ar, ai, br, bi := o.dar[i], o.dai[i], o.dbr[i], o.dbi[i]
-		eur, eui := dcr*ur-dci*ui+ar*vr-ai*vi, dcr*ui+dci*ur+ar*vi+ai*vr
-		evr, evi := br*ur-bi*ui+dcr*vr-dci*vi, br*ui+bi*ur+dcr*vi+dci*vr
-		der, dei := dur*eur-dui*eui+dvr*evr-dvi*evi, dur*eui+dui*eur+dvr*evi+dvi*evr
-
-		// The row behind the film, and dD per thickness without -i k0.
-		cr, ci := o.cr[i], o.ci[i]
-		ar, ai, br, bi = o.ar[i], o.ai[i], o.br[i], o.bi[i]
-		nur, nui := dur*cr-dui*ci+dvr*br-dvi*bi, dur*ci+dui*cr+dvr*bi+dvi*br
-		nvr, nvi := dur*ar-dui*ai+dvr*cr-dvi*ci, dur*ai+dui*ar+dvr*ci+dvi*cr
-		xvr, xvi := xxr*vr-xxi*vi, xxr*vi+xxi*vr
-		yur, yui := yr*ur-yi*ui, yr*ui+yi*ur
-		tdr := nur*xvr - nui*xvi + nvr*yur - nvi*yui
-		tdi := nur*xvi + nui*xvr + nvr*yui + nvi*yur
-
-		fr, fi := -2*rest[i]*ir, -2*rest[i]*ii
-		xr[i] += wr*omr - wi*omi + fr*der - fi*dei
-		xi[i] += wr*omi + wi*omr + fr*dei + fi*der
-		dd[i] += k0 * (wr*ti + wi*tr + fr*tdi + fi*tdr)
-
-		// The loss in the film itself, and what it adds to W.
-		loss := wt.flux[i] * weight[i] * s.gain[i]
+		wr, wi, f := s.wr[i], s.wi[i], -2*rest[i]
 		hur, hui, hvr, hvi := gur[i], gui[i], gvr[i], gvi[i]
-		xr[i] += loss * (eur*hvr + eui*hvi + evr*hur + evi*hui)
-		xi[i] += loss * (eui*hvr - eur*hvi + evi*hur - evr*hui)
-		dd[i] += loss * k0 * (xxi*(hvr*hvr+hvi*hvi) + yi*(hur*hur+hui*hui))
-		loss *= 2 * e
-		pr, pi := ar*vr-ci*ui, -ar*vi-ci*ur
-		mr, mi := br*ur-ci*vi, -br*ui-ci*vr
-		kr, ki := dur*pr-dui*pi-dvr*mr+dvi*mi, dur*pi+dui*pr-dvr*mi-dvi*mr
-		s.wr[i], s.wi[i] = e*wr+loss*(kr*ir-ki*ii), e*wi+loss*(kr*ii+ki*ir)
+		alr, ali := f*dur-(wr*hvr-wi*hvi), f*dui-(wr*hvi+wi*hvr)
+		ber, bei := f*dvr+(wr*hur-wi*hui), f*dvi+(wr*hui+wi*hur)
+
+		// H on the fields in front; the derivative by thickness is Re(-i k0 θ).
+		xxr, xxi, yr, yi := o.xr[i], o.xi[i], o.yr[i], o.yi[i]
+		xvr, xvi := xxr*hvr-xxi*hvi, xxr*hvi+xxi*hvr
+		yur, yui := yr*hur-yi*hui, yr*hui+yi*hur
+		thr := alr*xvr - ali*xvi + ber*yur - bei*yui
+		thi := alr*xvi + ali*xvr + ber*yui + bei*yur
+		ur, ui, vr, vi := fur[i], fui[i], fvr[i], fvi[i]
+		e, kd := o.e[i], t.kd[i]
+		if kd > thickPhase && e < 0.5 {
+			// The form y U² - x V² is that behind the film times e.
+			zr := e * (yr*(ur*ur-ui*ui) - 2*yi*ur*ui - xxr*(vr*vr-vi*vi) + 2*xxi*vr*vi)
+			zi := e * (2*yr*ur*ui + yi*(ur*ur-ui*ui) - 2*xxr*vr*vi - xxi*(vr*vr-vi*vi))
+			thr = wr*zr - wi*zi + f*(dur*xvr-dui*xvi+dvr*yur-dvi*yui)
+			thi = wr*zi + wi*zr + f*(dur*xvi+dui*xvr+dvr*yui+dvi*yur)
+		}
+		cr, ci := o.cr[i], o.ci[i]
+		ar, ai, br, bi := o.ar[i], o.ai[i], o.br[i], o.bi[i]
+		wr, wi = e*wr, e*wi
+		if loss := wt.flux[i] * weight[i] * s.gain[i]; loss != 0 {
+			alr, ali, ber, bei = alr+loss*hvr, ali-loss*hvi, ber+loss*hur, bei-loss*hui
+			u2, v2 := hur*hur+hui*hui, hvr*hvr+hvi*hvi
+			thr, thi = thr+loss*(xxr*v2+yr*u2), thi+loss*(xxi*v2+yi*u2)
+			loss *= 2 * e
+			pr, pi := ar*vr-ci*ui, -ar*vi-ci*ur
+			mr, mi := br*ur-ci*vi, -br*ui-ci*vr
+			wr += loss * (dur*pr - dui*pi - dvr*mr + dvi*mi)
+			wi += loss * (dur*pi + dui*pr - dvr*mi - dvi*mr)
+		}
+		s.wr[i], s.wi[i] = wr, wi
 		s.gain[i] *= e
-		s.dur[i], s.dui[i], s.dvr[i], s.dvi[i] = nur, nui, nvr, nvi
+		s.dur[i], s.dui[i] = dur*cr-dui*ci+dvr*br-dvi*bi, dur*ci+dui*cr+dvr*bi+dvi*br
+		s.dvr[i], s.dvi[i] = dur*ar-dui*ai+dvr*cr-dvi*ci, dur*ai+dui*ar+dvr*ci+dvi*cr
+
+		dd[i] += w.k0[i] * thi
+		gr, gi := t.gr[i], t.gi[i]
+		er, ei := kd*(gr*thi+gi*thr), kd*(gi*thi-gr*thr) // -i k0 d θ/(2q²)
+		if gr == 0 && gi == 0 {
+			cr, ci := t.cr[i], t.ci[i]
+			sr, si := alr*ur-ali*ui+ber*vr-bei*vi, alr*ui+ali*ur+ber*vi+bei*vr
+			er, ei = cr*sr-ci*si, cr*si+ci*sr
+		}
+		avr, avi := alr*vr-ali*vi, alr*vi+ali*vr
+		bur, bui := ber*ur-bei*ui, ber*ui+bei*ur
+		xr[i] += er + o.uur[i]*bur - o.uui[i]*bui + o.vvr[i]*avr - o.vvi[i]*avi
+		xi[i] += ei + o.uur[i]*bui + o.uui[i]*bur + o.vvr[i]*avi + o.vvi[i]*avr
 	}
 }
 
 // rescale follows the forward pass, which brought the fields in front of the
 // film back to the order of one.
-func (o *slopeRow) rescale(scale []float64) {
+func (rv *reversal) rescale(p int, scale []float64) {
+	o := &rv.slope[p]
 	for i, c2 := range scale {
 		c := math.Sqrt(c2)
-		for _, v := range [...]*[lanes]float64{&o.cr, &o.ci, &o.ar, &o.ai, &o.br, &o.bi, &o.dcr, &o.dci, &o.dar, &o.dai, &o.dbr, &o.dbi} {
+		for _, v := range [...]*[lanes]float64{&o.cr, &o.ci, &o.ar, &o.ai, &o.br, &o.bi, &o.uur, &o.uui, &o.vvr, &o.vvi} {
 			v[i] *= c
 		}
-		for _, v := range [...]*[lanes]float64{&o.uur, &o.uui, &o.uvr, &o.uvi, &o.vvr, &o.vvi, &o.e} {
-			v[i] *= c2
-		}
+		o.e[i] *= c2
 	}
 }
 

@@ -7,7 +7,7 @@ type reversal struct {
 	normal bool
 
 	film  filmRow
-	e     [lanes]float64
+	turn  turnRow
 	slope [2]slopeRow
 	walk  [2]pullRow
 

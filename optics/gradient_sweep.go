@@ -88,11 +88,7 @@ func (sw *GradientSweeper) Run(dst *SweepGradient, r *SweepResponse, s *Sweep, w
 	if workers == 1 {
 		sw.workers[0].run(dst, r, sw.partial, s, weights, 0, jobs)
 	} else {
-		var wg sync.WaitGroup
-		for i := range workers {
-			wg.Go(func() { sw.workers[i].run(dst, r, sw.partial, s, weights, i*jobs/workers, (i+1)*jobs/workers) })
-		}
-		wg.Wait()
+		sw.share(dst, r, s, weights, jobs, workers)
 	}
 	for job := range jobs {
 		for j := range films {
@@ -101,6 +97,15 @@ func (sw *GradientSweeper) Run(dst *SweepGradient, r *SweepResponse, s *Sweep, w
 	}
 	dst.Value = weights.of(r)
 	return dst.check(s)
+}
+
+// share gives every goroutine its part of the blocks.
+func (sw *GradientSweeper) share(dst *SweepGradient, r *SweepResponse, s *Sweep, weights *SweepWeights, jobs, workers int) {
+	var wg sync.WaitGroup
+	for i := range workers {
+		wg.Go(func() { sw.workers[i].run(dst, r, sw.partial, s, weights, i*jobs/workers, (i+1)*jobs/workers) })
+	}
+	wg.Wait()
 }
 
 // run computes the blocks of wavelengths from..to-1 at all angles.
