@@ -14,7 +14,8 @@ import (
 // with eps1 its exact Kramers-Kronig transform plus EpsInf. Source: A. S.
 // Ferlauto et al., J. Appl. Phys. 92, 2424 (2002). The transform is a closed
 // form (derived): partial fractions above Et (poles.go), exponential integrals
-// below. Accuracy about 1e-13 of |eps|; the derivatives have 1e-10 of the largest
+// below. Accuracy about 1e-13 of |eps| (ErrRange when fewer than 8 digits are left,
+// as with parameters many decades apart); the derivatives have 1e-10 of the largest
 // one where Eg + iEp nearly meets the oscillator's pole (Ep near Gamma/2 and Eg²
 // near E0² - Gamma²/4), else 1e-12.
 // The slope of eps2 jumps at Et, so that the derivative of eps1 with respect to
@@ -118,7 +119,11 @@ func (m *CodyLorentz) Permittivity(grad []complex128, lambda float64) (complex12
 			grad[6] += complex(0, -im*m.A*(e-m.Et)/m.Eu/m.Eu)
 		}
 	}
-	return settle("Cody-Lorentz", grad, complex(m.EpsInf+m.A*re*2/math.Pi, m.A*im), lambda)
+	eps := complex(m.EpsInf+m.A*re*2/math.Pi, m.A*im)
+	if j.lost(m.A*k*2/math.Pi, eps) {
+		return 0, fmt.Errorf("nk: Cody-Lorentz: parameters too far apart for the closed form (E0 %g, Gamma %g, Eg %g, Ep %g eV) at %g nm: %w", m.E0, m.Gamma, m.Eg, m.Ep, lambda, ErrRange)
+	}
+	return settle("Cody-Lorentz", grad, eps, lambda)
 }
 
 // Index returns N = n + ik; see Model.

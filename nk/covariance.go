@@ -98,7 +98,11 @@ func (s *fitState) statistics(res *FitResult) error {
 		return c
 	}
 	for k, j := range s.free {
-		res.StdErr[j] = math.Sqrt(variance*cov(k, k)) / norm[k]
+		e := math.Sqrt(variance*cov(k, k)) / norm[k]
+		if math.IsInf(e, 0) || math.IsNaN(e) {
+			return fmt.Errorf("nk: fit: standard error of parameter %d is %g: %w", j, e, ErrSingular)
+		}
+		res.StdErr[j] = e
 		for l, i := range s.free[:k] {
 			c := cov(k, l) / math.Sqrt(cov(k, k)*cov(l, l))
 			res.Correlation[j][i], res.Correlation[i][j] = c, c

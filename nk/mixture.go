@@ -103,7 +103,7 @@ func bruggemanTwo(e1, e2 complex128, f1 float64) complex128 {
 // bruggemanMany follows the root from a large loss added to all components down
 // to none, by Newton's method. eps is analytic in the added loss as long as it
 // is positive, and varies over a distance of the loss itself, so steps by a
-// factor of two are small.
+// factor are short; one that fails is shortened further.
 func bruggemanMany(n []complex128, f []float64, total float64) (complex128, error) {
 	scale := 0.0
 	var mean complex128
@@ -128,33 +128,41 @@ func bruggemanMany(n []complex128, f []float64, total float64) (complex128, erro
 		}
 		return g, gy, ge
 	}
-	const start, end = 1e4, 1e-17
+	const (
+		start, end, factor = 10.0, 1e-14, 0.1
+		farthest           = 0.3  // correction of a guess beyond which it was no good
+		visible            = 1e-9 // loss down to which the sign of Im y is above its rounding
+	)
 	t := start
 	y := mean/complex(scale, 0) + complex(0, t)
-	ratio := 0.5
+	ratio := factor
 	for steps := 0; steps < 10000; steps++ {
 		_, gy, ge := residual(y, t)
 		next := t * ratio
 		if next < end {
 			next = 0
 		}
-		z := y - ge/gy*complex(0, next-t)
-		ok := false
+		guess := y - ge/gy*complex(0, next-t)
+		z, ok := guess, false
 		for range 30 {
 			g, gz, _ := residual(z, next)
 			dz := g / gz
 			z -= dz
+			if !finite(z) || cmplx.Abs(z-guess) > farthest*cmplx.Abs(z) {
+				break
+			}
 			if cmplx.Abs(dz) <= 4e-16*cmplx.Abs(z) {
 				ok = true
 				break
 			}
 		}
-		// At the very end rounding may keep the last step above the test.
-		if g, gz, _ := residual(z, next); !ok && cmplx.Abs(g/gz) < 1e-13*cmplx.Abs(z) {
-			ok = true
+		// Rounding may keep the last step above that test.
+		if finite(z) && cmplx.Abs(z-guess) <= farthest*cmplx.Abs(z) && !ok {
+			g, gz, _ := residual(z, next)
+			ok = cmplx.Abs(g/gz) < 1e-13*cmplx.Abs(z)
 		}
-		if !ok || (next > 0 && imag(z) <= 0) || cmplx.IsNaN(z) {
-			if ratio = math.Sqrt(ratio); ratio > 0.999 {
+		if !ok || next > visible && imag(z) <= 0 {
+			if ratio = math.Sqrt(ratio); ratio > 0.9999 {
 				break
 			}
 			continue
@@ -162,7 +170,7 @@ func bruggemanMany(n []complex128, f []float64, total float64) (complex128, erro
 		if next == 0 {
 			return z * complex(scale, 0), nil
 		}
-		y, t, ratio = z, next, max(0.5, ratio*ratio)
+		y, t, ratio = z, next, max(factor, ratio*ratio)
 	}
 	return 0, fmt.Errorf("nk: Bruggeman: no root found for %d components: %w", len(n), ErrConvergence)
 }

@@ -26,8 +26,9 @@ type rational struct {
 	twoA, q1, q2 complex128 // poles of the oscillator in the upper half plane, their difference q1 - q2
 }
 
-// partial is J with its derivatives at fixed low.
-type partial struct{ value, eg, ep, e0, g float64 }
+// partial is J with its derivatives at fixed low, and the sum of the absolute
+// values of its terms, which tells how much they cancel.
+type partial struct{ value, eg, ep, e0, g, size float64 }
 
 const (
 	// Where two poles of the upper half plane come close, their residues grow
@@ -36,6 +37,10 @@ const (
 	crowdedOscillator = 0.02   // |q1 - q2|/E0 below which the oscillator's poles are too close
 	crowdedCody       = 0.0015 // distance of the Cody pole over G, same
 	spread            = 0.004  // step in G, relative
+
+	// Beyond this loss by cancellation, relative to |eps|, there is an error:
+	// parameters many decades apart, as a gap of a million times E0.
+	largestLoss = 1e-8
 )
 
 // nearWeight returns one of the points ±1, ±2, ±3, ±4 and the weight of a
@@ -72,6 +77,7 @@ func (r *rational) transform() partial {
 		r.placePoles()
 		p := r.sum()
 		out.value += w * p.value
+		out.size = max(out.size, p.size)
 		out.eg += w * p.eg
 		out.ep += w * p.ep
 		out.e0 += w * p.e0
@@ -79,6 +85,13 @@ func (r *rational) transform() partial {
 	}
 	r.g = g
 	return out
+}
+
+// lost tests whether the terms of J, times factor, cancel so far that eps has
+// no digits left to trust.
+func (p partial) lost(factor float64, eps complex128) bool {
+	const rounding = 2.3e-16
+	return !(factor*p.size*rounding <= largestLoss*cmplx.Abs(eps))
 }
 
 // placePoles finds the roots of (x² - E0²)² + G² x² in the upper half plane:
@@ -131,11 +144,13 @@ func (r *rational) realPoles() partial {
 		hp, hpEg, hpEp := codyFactor(-r.e-r.eg, r.ep)
 		f := -r.e / (2 * d)
 		p.value = f * (hm*minus - hp*plus)
+		p.size = math.Abs(f) * (math.Abs(hm*minus) + math.Abs(hp*plus))
 		p.eg = f * (hmEg*minus - hpEg*plus)
 		p.ep = f * (hmEp*minus - hpEp*plus)
 	} else {
 		f := -1 / (2 * d)
 		p.value = f * ((r.e+r.eg*(r.eg/r.e))*diff - 2*r.eg*(minus+plus))
+		p.size = math.Abs(f) * ((r.e+r.eg*(r.eg/r.e))*math.Abs(diff) + 2*r.eg*(math.Abs(minus)+math.Abs(plus)))
 		p.eg = f * (2*r.eg/r.e*diff - 2*(minus+plus))
 	}
 	p.e0 = p.value * 4 * r.e0 * (r.e - r.e0) * (r.e + r.e0) / d
@@ -168,6 +183,7 @@ func (r *rational) oscillatorPole(p *partial, q, twoA complex128) {
 	res := num / (twoA * complex(0, 2*r.g) * q * e2 * c)
 	low := complex(r.low, 0) - q
 	l := cmplx.Log(low)
+	p.size += 2 * cmplx.Abs(res*l)
 	along := dnum - 1/q - 2*q/e2 + cEg // logarithmic derivative of res along q; that of c along q is -cEg
 
 	p.value -= 2 * real(res*l)
@@ -190,6 +206,7 @@ func (r *rational) codyPole(p *partial) {
 	res := complex(0, r.ep/2) * q * q / (d * e2)
 	low := complex(r.low, 0) - q
 	l := cmplx.Log(low)
+	p.size += 2 * cmplx.Abs(res*l)
 	along := 2/q - (4*q*a+complex(2*r.g*r.g, 0)*q)/d - 2*q/e2
 
 	p.value -= 2 * real(res*l)

@@ -1,6 +1,9 @@
 package nk
 
-import "math"
+import (
+	"fmt"
+	"math"
+)
 
 // TaucLorentz is the interband response of amorphous semiconductors and
 // dielectrics, a Lorentz oscillator cut off by the Tauc gap:
@@ -12,7 +15,9 @@ import "math"
 // (1996). The transform is evaluated by partial fractions in the poles of the
 // oscillator (derived: see poles.go), which is the published closed form with
 // the erratum's signs where that is defined (C < 2 E0) and holds beyond.
-// Accuracy about 1e-13 of |eps|, of the derivatives 1e-12 of the largest one.
+// Accuracy 1e-13 of |eps|, of the derivatives 1e-12 of the largest one; where E0
+// is far below Eg (a tenth or less) the form cancels: 1e-9, and ErrRange when
+// fewer than 8 digits of eps are left.
 type TaucLorentz struct {
 	A      float64 // amplitude, eV, >= 0
 	E0     float64 // resonance energy, eV, > 0
@@ -56,7 +61,11 @@ func (m *TaucLorentz) Permittivity(grad []complex128, lambda float64) (complex12
 		grad[3] = complex(m.A*k*j.eg, m.A*sEg)
 		grad[4] = 1
 	}
-	return settle("Tauc-Lorentz", grad, complex(m.EpsInf+m.A*k*j.value, m.A*s), lambda)
+	eps := complex(m.EpsInf+m.A*k*j.value, m.A*s)
+	if j.lost(m.A*k, eps) {
+		return 0, fmt.Errorf("nk: Tauc-Lorentz: parameters too far apart for the closed form (E0 %g, C %g, Eg %g eV) at %g nm: %w", m.E0, m.C, m.Eg, lambda, ErrRange)
+	}
+	return settle("Tauc-Lorentz", grad, eps, lambda)
 }
 
 // lorentzDenominator returns (E² - E0²)² + G² E².
