@@ -118,17 +118,17 @@ func (rv *reversal) adjointBack(bl *block, p, b int) {
 		for l := range b {
 			e, w := k.e[l], rv.a[p][bl.thick[i]*lanes+l]
 			x.rho[p][l] = rho[l]
-			if e == 0 {
+			den := k.denominator[p][l]
+			if e == 0 || den == 0 { // no light comes back from the film, or none enters it
 				x.gamma[p][l], x.phi[p][l], x.psi[p][l] = w, 0, 0
 				next[l], rho[l] = w, f.r[p][l]
 				continue
 			}
 			x.ahead[p][l] = rv.absorbed(g, p, l) + w*g.d[p][l]
 			x.returned[p][l] = rv.absorbed(r, p, l) + w*r.d[p][l]
-			den := 1 / k.denominator[p][l]
 			x.gamma[p][l] = w*k.m[l] + e*(x.ahead[p][l]+g.t[p][l]*next[l])
-			x.phi[p][l] = (w*k.m[l] + e*(x.returned[p][l]+r.r[p][l]*x.gamma[p][l])) * den
-			x.psi[p][l] = e * r.t[p][l] * den
+			x.phi[p][l] = (w*k.m[l] + e*(x.returned[p][l]+r.r[p][l]*x.gamma[p][l])) / den
+			x.psi[p][l] = e * r.t[p][l] / den
 			next[l] = x.gamma[p][l] + e*rho[l]*x.phi[p][l]
 			rho[l] = f.r[p][l] + f.t[p][l]*e*rho[l]*x.psi[p][l]
 		}
