@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 	"text/tabwriter"
@@ -232,29 +233,43 @@ func WriteAccounts(w io.Writer, titles []string, accounts []Account) error {
 	return t.Flush()
 }
 
-// WriteCSV writes the shares of the ledger, one line per wavelength: the
-// wavelength in nm, the incident photon flux in cm^-2 s^-1 nm^-1, and the share
-// of each entry under its name.
-func (l Ledger) WriteCSV(w io.Writer) error {
-	if _, err := l.Integrate(); err != nil {
-		return err
+// WriteShares writes the shares of ledgers over the same wavelengths as CSV, one
+// line per wavelength: the wavelength in nm, the incident photon flux in
+// cm^-2 s^-1 nm^-1, and for each title the share of each entry and, where it is
+// known, its standard error.
+func WriteShares(w io.Writer, titles []string, ledgers []Ledger) error {
+	if len(titles) != len(ledgers) || len(ledgers) == 0 {
+		return fmt.Errorf("spectrum: %d titles for %d ledgers: %w", len(titles), len(ledgers), ErrInput)
+	}
+	record := []string{"wavelength_nm", "photons_per_cm2_s_nm"}
+	var columns [][]float64
+	for i, l := range ledgers {
+		if _, err := l.Integrate(); err != nil {
+			return err
+		}
+		if !slices.Equal(l.Wavelength, ledgers[0].Wavelength) {
+			return fmt.Errorf("spectrum: ledgers %q and %q have different wavelengths: %w", titles[0], titles[i], ErrInput)
+		}
+		for _, e := range l.Entries {
+			name := strings.ReplaceAll(strings.TrimSpace(titles[i]+" "+e.Name), " ", "_")
+			record, columns = append(record, name), append(columns, e.Share)
+			if e.StdError != nil {
+				record, columns = append(record, name+"_stderr"), append(columns, e.StdError)
+			}
+		}
 	}
 	out := csv.NewWriter(w)
-	record := []string{"wavelength_nm", "photons_per_cm2_s_nm"}
-	for _, e := range l.Entries {
-		record = append(record, strings.ReplaceAll(e.Name, " ", "_"))
-	}
 	if err := out.Write(record); err != nil {
 		return err
 	}
-	for i, wl := range l.Wavelength {
-		irradiance, err := l.Spectrum.At(wl)
+	for i, wl := range ledgers[0].Wavelength {
+		irradiance, err := ledgers[0].Spectrum.At(wl)
 		if err != nil {
 			return err
 		}
 		record = append(record[:0], number(wl), number(photonsPerIrradiance*irradiance*wl))
-		for _, e := range l.Entries {
-			record = append(record, number(e.Share[i]))
+		for _, c := range columns {
+			record = append(record, number(c[i]))
 		}
 		if err := out.Write(record); err != nil {
 			return err
