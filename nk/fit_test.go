@@ -262,6 +262,54 @@ func TestFitPeriod(t *testing.T) {
 	}
 }
 
+// TestFitEllipsometry fits index and thickness of a film to psi and delta
+// (degrees, 70°, film on a substrate of 3.9 + 0.02i) where delta passes through
+// 360. The three-phase formula is that of R. M. A. Azzam and N. M. Bashara,
+// Ellipsometry and Polarized Light (1977), section 4.3.
+func TestFitEllipsometry(t *testing.T) {
+	const points, degree = 41, math.Pi / 180
+	model := func(dst, p []float64) error {
+		film := Cauchy{A: p[0], B: p[1]}
+		sin0, cos0 := complex(math.Sin(70*degree), 0), complex(math.Cos(70*degree), 0)
+		ns := complex(3.9, 0.02)
+		for i := range points {
+			lambda := 400 + 10*float64(i)
+			n, err := film.Index(lambda)
+			if err != nil {
+				return err
+			}
+			cos1, cos2 := cmplx.Sqrt(1-sin0*sin0/(n*n)), cmplx.Sqrt(1-sin0*sin0/(ns*ns))
+			s := func(na, ca, nb, cb complex128) complex128 { return (na*ca - nb*cb) / (na*ca + nb*cb) }
+			x := cmplx.Exp(complex(0, 4*math.Pi*p[2]/lambda) * n * cos1)
+			total := func(a, b complex128) complex128 { return (a + b*x) / (1 + a*b*x) }
+			rho := total(s(n, cos0, 1, cos1), s(ns, cos1, n, cos2)) / total(s(1, cos0, n, cos1), s(n, cos1, ns, cos2))
+			dst[i] = math.Atan(cmplx.Abs(rho)) / degree
+			dst[points+i] = math.Mod(cmplx.Phase(rho)/degree+360, 360)
+		}
+		return nil
+	}
+	truth := []float64{1.95, 0.015, 90}
+	p := FitProblem{Model: model, Data: make([]float64, 2*points), Start: []float64{2.1, 0.01, 85}, Period: make([]float64, 2*points)}
+	if err := model(p.Data, truth); err != nil {
+		t.Fatal(err)
+	}
+	for i := range points {
+		p.Period[points+i] = 360
+	}
+	if span := slices.Max(p.Data[points:]) - slices.Min(p.Data[points:]); span < 300 {
+		t.Fatalf("delta spans %g degrees only: it does not pass through 360", span)
+	}
+	res, err := Fit(p)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for j, v := range truth {
+		if math.Abs(res.Params[j]-v) > 1e-9*v {
+			t.Errorf("parameter %d = %.12g, want %g", j, res.Params[j], v)
+		}
+	}
+}
+
 func TestFitErrors(t *testing.T) {
 	flat := func(dst, p []float64) error {
 		for i := range dst {

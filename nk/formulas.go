@@ -88,7 +88,7 @@ func otherFormulas() []Published {
 		{"si_edwards1980", "silicon, infrared", "D. F. Edwards and E. Ochoa, Appl. Opt. 19, 4130 (1980)", "room temperature", 2437.3, 25000,
 			&Herzberger{A: 3.41983, B: 0.159906, C: -0.123109, D: 1.26878e-6, E: -1.95104e-9, Pole: 0.028}},
 		{"asi_jellison1996", "amorphous silicon", "G. E. Jellison and F. A. Modine, Appl. Phys. Lett. 69, 371 (1996), erratum 69, 2137 (1996)",
-			"parameters from memory, not read; the range 0.5-5 eV is that of this package's checks, not the paper's", nmEV / 5, nmEV / 0.5,
+			"parameters from memory, not read; a fit to the table asi_pierce1972 gives nearly the same, and the range is that table's", 206.6, 2066,
 			&TaucLorentz{A: 122, E0: 3.45, C: 2.54, Eg: 1.20, EpsInf: 1.15}},
 	}
 }

@@ -100,75 +100,85 @@ func bruggemanTwo(e1, e2 complex128, f1 float64) complex128 {
 	return best * complex(scale, 0)
 }
 
+// bruggemanEquation is the equation divided by the largest |eps| (scale), with
+// the imaginary part t added to every component.
+type bruggemanEquation struct {
+	n            []complex128
+	f            []float64
+	total, scale float64
+}
+
+// at returns g = sum of f (e - y)/(e + 2y) and its derivatives with respect to y
+// and to a common shift of all e.
+func (q *bruggemanEquation) at(y complex128, t float64) (g, gy, ge complex128) {
+	for i, v := range q.n {
+		if q.f[i] == 0 {
+			continue
+		}
+		e := v*v/complex(q.scale, 0) + complex(0, t)
+		w, d := complex(q.f[i]/q.total, 0), 1/(e+2*y)
+		g += w * (e - y) * d
+		gy -= 3 * w * e * d * d
+		ge += 3 * w * y * d * d
+	}
+	return g, gy, ge
+}
+
+// farthest is the relative correction of a guess beyond which it was no good.
+const farthest = 0.3
+
+// solve improves a guess of the root by Newton's method; ok if it converged
+// without going far.
+func (q *bruggemanEquation) solve(guess complex128, t float64) (z complex128, ok bool) {
+	z = guess
+	step := math.Inf(1)
+	for range 30 {
+		g, gz, _ := q.at(z, t)
+		dz := g / gz
+		z -= dz
+		if !finite(z) || cmplx.Abs(z-guess) > farthest*cmplx.Abs(z) {
+			return z, false
+		}
+		if step = cmplx.Abs(dz) / cmplx.Abs(z); step <= 4e-16 {
+			return z, true
+		}
+	}
+	return z, step < 1e-13 // rounding may keep the steps above the test
+}
+
 // bruggemanMany follows the root from a large loss added to all components down
-// to none, by Newton's method. eps is analytic in the added loss as long as it
-// is positive, and varies over a distance of the loss itself, so steps by a
-// factor are short; one that fails is shortened further.
+// to none. eps is analytic in the added loss as long as it is positive, and
+// varies over a distance of the loss itself, so steps by a factor are short; one
+// that fails is shortened further.
 func bruggemanMany(n []complex128, f []float64, total float64) (complex128, error) {
-	scale := 0.0
+	const (
+		start, end = 10.0, 1e-14
+		factor     = 0.1
+		visible    = 1e-9 // loss down to which the sign of Im y is above its rounding
+	)
+	q := bruggemanEquation{n: n, f: f, total: total}
 	var mean complex128
 	for i, v := range n {
 		if f[i] > 0 {
-			scale = max(scale, cmplx.Abs(v*v))
+			q.scale = max(q.scale, cmplx.Abs(v*v))
 			mean += complex(f[i]/total, 0) * v * v
 		}
 	}
-	// residual returns sum of f (e - y)/(e + 2y), its derivative with respect
-	// to y, and that with respect to a shift of all e, all times the scale.
-	residual := func(y complex128, t float64) (g, gy, ge complex128) {
-		for i, v := range n {
-			if f[i] == 0 {
-				continue
-			}
-			e := v*v/complex(scale, 0) + complex(0, t)
-			w, d := complex(f[i]/total, 0), 1/(e+2*y)
-			g += w * (e - y) * d
-			gy -= 3 * w * e * d * d
-			ge += 3 * w * y * d * d
-		}
-		return g, gy, ge
-	}
-	const (
-		start, end, factor = 10.0, 1e-14, 0.1
-		farthest           = 0.3  // correction of a guess beyond which it was no good
-		visible            = 1e-9 // loss down to which the sign of Im y is above its rounding
-	)
-	t := start
-	y := mean/complex(scale, 0) + complex(0, t)
-	ratio := factor
-	for steps := 0; steps < 10000; steps++ {
-		_, gy, ge := residual(y, t)
+	t, ratio := start, factor
+	y := mean/complex(q.scale, 0) + complex(0, t)
+	for ratio < 0.9999 {
 		next := t * ratio
 		if next < end {
 			next = 0
 		}
-		guess := y - ge/gy*complex(0, next-t)
-		z, ok := guess, false
-		for range 30 {
-			g, gz, _ := residual(z, next)
-			dz := g / gz
-			z -= dz
-			if !finite(z) || cmplx.Abs(z-guess) > farthest*cmplx.Abs(z) {
-				break
-			}
-			if cmplx.Abs(dz) <= 4e-16*cmplx.Abs(z) {
-				ok = true
-				break
-			}
-		}
-		// Rounding may keep the last step above that test.
-		if finite(z) && cmplx.Abs(z-guess) <= farthest*cmplx.Abs(z) && !ok {
-			g, gz, _ := residual(z, next)
-			ok = cmplx.Abs(g/gz) < 1e-13*cmplx.Abs(z)
-		}
+		_, gy, ge := q.at(y, t)
+		z, ok := q.solve(y-ge/gy*complex(0, next-t), next)
 		if !ok || next > visible && imag(z) <= 0 {
-			if ratio = math.Sqrt(ratio); ratio > 0.9999 {
-				break
-			}
+			ratio = math.Sqrt(ratio)
 			continue
 		}
 		if next == 0 {
-			return z * complex(scale, 0), nil
+			return z * complex(q.scale, 0), nil
 		}
 		y, t, ratio = z, next, max(factor, ratio*ratio)
 	}
