@@ -10,6 +10,8 @@ import (
 
 // Exact properties of plane waves in films; no outside figures are needed.
 
+const degree = math.Pi / 180
+
 func solve(t *testing.T, st Stack, w Wave) Response {
 	t.Helper()
 	r, err := Solve(st, w)

@@ -10,6 +10,7 @@ import (
 	"io"
 	"math"
 	"os"
+	"path/filepath"
 	"strconv"
 	"strings"
 )
@@ -74,7 +75,7 @@ func Load(path string) ([]Row, error) {
 		if err != nil {
 			return nil, fmt.Errorf("check: %s:%d: %w", path, line, err)
 		}
-		row.File, row.Line = path[strings.LastIndexByte(path, '/')+1:], line
+		row.File, row.Line = filepath.Base(path), line
 		rows = append(rows, row)
 	}
 	if len(rows) == 0 {

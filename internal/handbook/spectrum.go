@@ -1,0 +1,68 @@
+package handbook
+
+import (
+	"fmt"
+	"math"
+
+	"gonum.org/v1/gonum/unit/constant"
+
+	"photonledger/internal/check"
+	"photonledger/spectrum"
+)
+
+const milliPerOne = 1e3
+
+// standard holds the columns of ASTM G173-03.
+var standard = map[string]func() spectrum.Spectrum{"global": spectrum.AM15G, "direct": spectrum.AM15D, "extraterrestrial": spectrum.AM0, "": spectrum.AM15G}
+
+// spectrumQuantity computes a row about spectra and their integrals.
+func spectrumQuantity(row check.Row) (float64, error) {
+	s := standard[row.Inputs["spectrum"]]()
+	window := []float64{row.Num("from"), row.Num("to")}
+	all := []float64{1, 1}
+	switch row.Quantity {
+	case "irradiance":
+		return s.Total()
+	case "gap_current":
+		return spectrum.MaxPhotocurrent(s, row.Num("gap"))
+	case "scaled_gap_current":
+		s, err := s.ScaleTo(1000)
+		if err != nil {
+			return 0, err
+		}
+		return spectrum.MaxPhotocurrent(s, row.Num("gap"))
+	case "window_current":
+		return spectrum.Photocurrent(s, window, all)
+	case "window_irradiance":
+		return spectrum.AbsorbedPower(s, window, all)
+	case "photon_flux":
+		j, err := spectrum.Photocurrent(s, []float64{280, 4000}, all)
+		return j / (float64(constant.ElementaryCharge) * milliPerOne), err
+	case "mismatch":
+		// Responsivities of ideal devices: proportional to wavelength up to the gap.
+		device := func(gap float64) spectrum.Response {
+			edge := spectrum.WavelengthOfEnergy / gap
+			return spectrum.Response{Wavelength: []float64{280, edge}, Value: []float64{280, edge}}
+		}
+		return spectrum.Mismatch(standard[row.Inputs["reference"]](), standard[row.Inputs["measured"]](), device(row.Num("reference_gap")), device(row.Num("device_gap")))
+	case "responsivity":
+		return spectrum.Responsivity(row.Num("wavelength"), row.Num("eqe")), nil
+	case "radiance":
+		return spectrum.Radiance(row.Num("wavelength"), row.Num("temperature")), nil
+	case "photon_energy_constant":
+		return spectrum.WavelengthOfEnergy, nil
+	case "exitance":
+		// 0.1 to 400 times the wavelength of Wien's law, in equal ratios.
+		peak := 2.9e6 / row.Num("temperature")
+		var grid []float64
+		for x := 0.08; x < 400; x *= 1.001 {
+			grid = append(grid, x*peak)
+		}
+		s, err := spectrum.Planck(grid, row.Num("temperature"), math.Pi/2)
+		if err != nil {
+			return 0, err
+		}
+		return s.Total()
+	}
+	return 0, fmt.Errorf("quantity %q is not known here", row.Quantity)
+}
