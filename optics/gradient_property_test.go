@@ -180,41 +180,94 @@ func TestGradientPlate(t *testing.T) {
 	}
 }
 
-// TestGradientManyFilms: 200 films, whose fields grow beyond the range of the
-// first ones, against the same stack seen by differences.
+// TestGradientManyFilms: 200 films that let 1e-80 of the light through, so that
+// their fields leave the range of a double unless they are rescaled, against
+// difference quotients of the logarithm of the transmittance.
 func TestGradientManyFilms(t *testing.T) {
 	st := Stack{Front: 1, Back: 1.52}
 	for j := range 200 {
-		n := complex(2.35, 1e-5)
+		n := complex(3.5, 1e-5)
 		if j%2 == 1 {
-			n = 1.46
+			n = 1.3
 		}
 		st.Films = append(st.Films, Film{Index: n, Thickness: 550 / (4 * real(n))})
 	}
-	w := Wave{Wavelength: 560, Angle: 0.3, Polarization: P}
-	weights := Weights{A: make([]float64, 200)}
-	for j := range weights.A {
-		weights.A[j] = 1
-	}
-	_, g, err := SolveGradient(st, w, weights)
-	if err != nil {
-		t.Fatal(err)
-	}
-	top := g.largest(w.Wavelength)
-	for _, j := range []int{0, 1, 7, 40} {
-		d, h := st.Films[j].Thickness, 1e-3
-		at := func(x float64) float64 {
-			st.Films[j].Thickness = x
-			r, err := Solve(st, w)
+	for _, pol := range []Polarization{S, P} {
+		w := Wave{Wavelength: 560, Angle: 0.3, Polarization: pol}
+		r, g, err := SolveGradient(st, w, Weights{T: 1})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if !(r.T > 0 && r.T < 1e-70) {
+			t.Errorf("T = %g, want about 1e-80", r.T)
+		}
+		for _, j := range []int{0, 1, 40, 77, 120, 198, 199} {
+			d, h := st.Films[j].Thickness, 1e-3
+			at := func(x float64) float64 {
+				st.Films[j].Thickness = x
+				r, err := Solve(st, w)
+				if err != nil {
+					t.Fatal(err)
+				}
+				return math.Log(r.T)
+			}
+			want := (at(d+h) - at(d-h)) / (2 * h)
+			st.Films[j].Thickness = d
+			if got := g.Thickness[j] / r.T; !(math.Abs(got-want) <= 1e-8) {
+				t.Errorf("%v, film %d: d log T = %g per nm, difference quotient %g", pol, j, got, want)
+			}
+		}
+		at := func(n float64) float64 {
+			behind := st
+			behind.Back = complex(n, 0)
+			r, err := Solve(behind, w)
 			if err != nil {
 				t.Fatal(err)
 			}
-			return weights.of(r)
+			return math.Log(r.T)
 		}
-		want := (at(d+h) - at(d-h)) / (2 * h)
-		st.Films[j].Thickness = d
-		if math.Abs(g.Thickness[j]-want)*w.Wavelength > 1e-7*top {
-			t.Errorf("film %d: %g, difference quotient %g", j, g.Thickness[j], want)
+		want := (at(1.52+1e-5) - at(1.52-1e-5)) / 2e-5
+		if got := g.BackN / r.T; !(math.Abs(got-want) <= 1e-8) {
+			t.Errorf("%v: d log T = %g by n of the back medium, difference quotient %g", pol, got, want)
+		}
+	}
+}
+
+// TestGradientLongPath: a film of 10^8 rad. An opaque one acts as a back
+// medium of its index; a clear one is the same as its two halves.
+func TestGradientLongPath(t *testing.T) {
+	const d = 1e8 * 500 / (2 * math.Pi)
+	for _, pol := range []Polarization{S, P} {
+		w := Wave{Wavelength: 500, Angle: 0.7, Polarization: pol}
+		for _, n := range []complex128{1.5 + 0.01i, 0.3 + 3i} {
+			film := Film{Index: n, Thickness: d}
+			_, g, err := SolveGradient(Stack{Front: 1, Films: []Film{film}, Back: 1.5}, w, Weights{R: 1})
+			if err != nil {
+				t.Fatal(err)
+			}
+			_, bare, err := SolveGradient(Stack{Front: 1, Back: n}, w, Weights{R: 1})
+			if err != nil {
+				t.Fatal(err)
+			}
+			if math.Abs(g.N[0]-bare.BackN) > 1e-14 || math.Abs(g.K[0]-bare.BackK) > 1e-14 || math.Abs(g.Thickness[0])*500 > 1e-14 {
+				t.Errorf("%v %v: %g, %g, %g, want %g, %g, 0", pol, n, g.N[0], g.K[0], g.Thickness[0], bare.BackN, bare.BackK)
+			}
+		}
+		clear := Film{Index: 1.5, Thickness: d}
+		half := Film{Index: 1.5, Thickness: d / 2}
+		_, g, err := SolveGradient(Stack{Front: 1, Films: []Film{clear}, Back: 3.5}, w, Weights{R: 1})
+		if err != nil {
+			t.Fatal(err)
+		}
+		_, h, err := SolveGradient(Stack{Front: 1, Films: []Film{half, half}, Back: 3.5}, w, Weights{R: 1})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got, want := h.N[0]+h.N[1], g.N[0]; math.Abs(got-want) > 1e-10*math.Abs(want) {
+			t.Errorf("%v: dR/dn = %g of the halves, %g of the whole", pol, got, want)
+		}
+		if got, want := h.Thickness[1], g.Thickness[0]; math.Abs(got-want) > 1e-10*math.Abs(want) {
+			t.Errorf("%v: dR/dd = %g of the half, %g of the whole", pol, got, want)
 		}
 	}
 }

@@ -138,6 +138,12 @@ def coherent_cases(path):
         out.append((name, (v['front_n'], v['angle_rad'], v['wavelength_nm'], v['thickness_nm'], v['n'], v['k'], v['back_n'], v['back_k'], [False]*S)))
         if name in ('benign', 'thick absorbing') and count[key] <= 3:
             out.append(('normal incidence', (v['front_n'], 0.0, v['wavelength_nm'], v['thickness_nm'], v['n'], v['k'], v['back_n'], v['back_k'], [False]*S)))
+    rnd = random.Random(12); U = rnd.uniform
+    L = lambda a, b: math.exp(U(math.log(a), math.log(b)))
+    for i in range(12):
+        S, lam = rnd.randint(1, 4), U(300, 1200)
+        out.append(('very thick', (U(1, 1.6), rnd.choice([0.0, U(0, 1.5)]), lam, [L(1, 1e4)*lam for _ in range(S)], [U(.05, 4) for _ in range(S)],
+                                   [rnd.choice([0.0, L(1e-6, 10)]) for _ in range(S)], U(1, 4), rnd.choice([0.0, U(0, 8)]), [False]*S)))
     # Films thinner than a thousandth of a wavelength, one of them absent.
     out.append(('thin', (1.0, 0.6, 600.0, [0.0, 0.3, 1e-3, 50.0], [1.5, 0.2, 3.0, 2.0], [0.0, 3.5, 0.5, 0.0], 3.5, 0.01, [False]*4)))
     return out
