@@ -1,70 +1,9 @@
 package nk
 
 import (
-	"fmt"
 	"math"
 	"testing"
-
-	"photonledger/internal/check"
 )
-
-// TestHandbookTables computes every row of nk_tables.csv.
-func TestHandbookTables(t *testing.T) {
-	rows, err := check.Load("../testdata/handbook/nk_tables.csv")
-	if err != nil {
-		t.Fatal(err)
-	}
-	for _, r := range rows {
-		got, err := tableQuantity(r)
-		if err != nil {
-			t.Errorf("%s:%d: %v", r.File, r.Line, err)
-			continue
-		}
-		if err := r.Judge(got); err != nil {
-			t.Error(err)
-		}
-	}
-}
-
-func tableQuantity(r check.Row) (float64, error) {
-	nm := r.Num("nm")
-	switch r.Quantity {
-	case "alpha free electrons", "alpha free holes":
-		for _, f := range allFreeCarriers() {
-			if f.Name != r.Inputs["law"] {
-				continue
-			}
-			if r.Quantity == "alpha free electrons" {
-				return f.Alpha(nm, r.Num("density"), 0), nil
-			}
-			return f.Alpha(nm, 0, r.Num("density")), nil
-		}
-		return 0, fmt.Errorf("no law %q", r.Inputs["law"])
-	}
-	m, err := Material(r.Inputs["material"])
-	if err != nil {
-		return 0, err
-	}
-	if r.Quantity == "uncertainty table" {
-		return m.RelativeUncertainty(nm)
-	}
-	v, err := m.At(nm)
-	if err != nil {
-		return 0, err
-	}
-	n, k := real(v), imag(v)
-	switch r.Quantity {
-	case "n table":
-		return n, nil
-	case "k table":
-		return k, nil
-	case "alpha table":
-		return AbsorptionCoefficient(k, nm), nil
-	case "reflectance table":
-		return ((n-1)*(n-1) + k*k) / ((n+1)*(n+1) + k*k), nil
-	}
-	return 0, fmt.Errorf("quantity %q", r.Quantity)
-}
 
 func allFreeCarriers() []FreeCarriers {
 	return []FreeCarriers{FreeCarriersSchroder1978(), FreeCarriersGreen1995(), FreeCarriersRuediger2013(), FreeCarriersBakerFinch2014()}
