@@ -40,11 +40,11 @@ func spectrumQuantity(row check.Row) (float64, error) {
 		return j / (float64(constant.ElementaryCharge) * milliPerOne), err
 	case "mismatch":
 		// Responsivities of ideal devices: proportional to wavelength up to the gap.
-		device := func(gap float64) spectrum.Response {
+		device := func(gap float64) spectrum.Curve {
 			edge := spectrum.WavelengthOfEnergy / gap
-			return spectrum.Response{Wavelength: []float64{280, edge}, Value: []float64{280, edge}}
+			return spectrum.Curve{Wavelength: []float64{280, edge}, Value: []float64{280, edge}}
 		}
-		return spectrum.Mismatch(standard[row.Inputs["reference"]](), standard[row.Inputs["measured"]](), device(row.Num("reference_gap")), device(row.Num("device_gap")))
+		return spectrum.Mismatch(standard[row.Inputs["reference"]](), standard[row.Inputs["measured"]](), device(row.Num("reference_gap")), device(row.Num("device_gap")), spectrum.Power)
 	case "responsivity":
 		return spectrum.Responsivity(row.Num("wavelength"), row.Num("eqe")), nil
 	case "radiance":
