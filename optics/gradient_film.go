@@ -56,13 +56,13 @@ func phaseSeries(z complex128) complex128 {
 }
 
 // trace finds the phase factors of the film once more, as the forward pass
-// did.
-func (rv *reversal) trace(w *waveRow, n, k []float64, d float64) {
-	f, b := &rv.film, len(n)
+// did; e are the values of exp(-2y) found there.
+func (rv *reversal) trace(w *waveRow, n, k []float64, d float64, e []float64) {
+	f, s, b := &rv.film, &rv.slope[0], len(n)
 	if b > lanes {
 		b = lanes
 	}
-	n, k = n[:b], k[:b]
+	n, k, e = n[:b], k[:b], e[:b]
 	for i := range n {
 		var qr, qi, kr float64
 		if rv.normal {
@@ -71,14 +71,17 @@ func (rv *reversal) trace(w *waveRow, n, k []float64, d float64) {
 			qr, qi, kr = normalWave(n[i], k[i], w.n0[i], w.q0sq[i])
 		}
 		kd := w.k0[i] * d
-		f.qr[i], f.qi[i], f.kr[i] = qr, qi, kr
-		f.phase[i], f.decay[i] = kd*qr, -2*kd*qi
-		rv.turn.kd[i] = kd
+		v := -2 * kd * qi
+		m := 1 - e[i]
+		if v > -0.01 {
+			m = -v * (1 + v*(0.5+v*(inv3+v*(inv4+v*(inv5+v*inv6)))))
+		}
+		f.qr[i], f.qi[i], f.kr[i], f.m[i], f.phase[i] = qr, qi, kr, m, kd*qr
+		s.e[i], rv.turn.kd[i] = e[i], kd
 	}
 	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
 	f.correctPhase(w, n, k, d)
-	expRow(rv.slope[0].e[:b], f.m[:b], f.decay[:b])
-	rv.slope[1].e = rv.slope[0].e
+	rv.slope[1].e = s.e
 }
 
 // slopes fills the rows of the polarisations in use.

@@ -60,7 +60,7 @@ func (rv *reversal) pull(g *group, w *waveRow, films *filmTable, wt *[2]groupWei
 	for j := range g.count {
 		film := g.first + j*g.step
 		n, k := films.row(film, b)
-		rv.trace(w, n, k, films.d[film])
+		rv.trace(w, n, k, films.d[film], g.e[j*lanes:])
 		rv.slopes(n, k)
 		for p := range 2 {
 			if rv.use[p] {

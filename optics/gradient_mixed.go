@@ -51,9 +51,11 @@ func (rv *reversal) prepare(bl *block, films int, ws, wp float64, normal bool) {
 // run finds the derivatives of the objective whose weights stand in r, t and
 // a for b lanes of the solved block.
 func (rv *reversal) run(bl *block, films *filmTable, b int) {
-	clear(rv.xr)
-	clear(rv.xi)
-	clear(rv.dd)
+	for at := 0; at < len(rv.xr); at += lanes {
+		clear(rv.xr[at:][:b])
+		clear(rv.xi[at:][:b])
+		clear(rv.dd[at:][:b])
+	}
 	rv.back = mediumSlope{}
 	n := len(bl.thick)
 	for i := range n {
