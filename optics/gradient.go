@@ -68,8 +68,8 @@ type GradientSolver struct {
 // short. An error wraps [ErrInput], or [ErrSingular] where the derivative is
 // infinite.
 //
-// The derivatives agree with those of 80-digit solutions to 3e-13 of the largest
-// one, thicknesses taken in wavelengths, and to 1e-10 where films are up to 10^4
+// The derivatives agree with those of 80-digit solutions to 5e-13 of the largest
+// one, thicknesses taken in wavelengths, and to 1e-9 where films are up to 10^4
 // wavelengths thick (testdata/vectors/derivatives.jsonl). Those of the
 // absorptance of a film without loss vanish but for the one by its own k.
 func (s *GradientSolver) Solve(dst *Gradient, r *Response, st Stack, w Wave, weights Weights) error {
