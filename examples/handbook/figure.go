@@ -18,7 +18,10 @@ func drawFigure(path string, results []result) error {
 	p.Title.Text = "published values: deviation in units of the allowed one"
 	p.Y.Label.Text = "deviation / allowed deviation"
 	p.Y.Scale = plot.LogScale{}
-	p.Y.Tick.Marker = plot.LogTicks{Prec: -1}
+	p.Y.Tick.Marker = plot.ConstantTicks{
+		{Value: floor, Label: "none"}, {Value: 1e-5, Label: "1e-5"}, {Value: 1e-4, Label: "1e-4"}, {Value: 1e-3, Label: "0.001"},
+		{Value: 0.01, Label: "0.01"}, {Value: 0.1, Label: "0.1"}, {Value: 1, Label: "1"},
+	}
 	p.Y.Min, p.Y.Max = floor, 2
 	var names []string
 	var dots plotter.XYs
