@@ -13,7 +13,7 @@
 // varies with depth ([Grade], [Solver.SolveGraded]), rough interfaces in scalar
 // theory ([SolveRough]), the absorption density in every film
 // ([SolveProfiles]), and all derivatives in one reverse pass
-// ([Solver.Gradient]).
+// ([GradientSolver.Solve], [GradientSweeper.Run]).
 //
 // # Conventions
 //
