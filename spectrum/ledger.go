@@ -1,26 +1,22 @@
 package spectrum
 
 import (
-	"encoding/csv"
 	"fmt"
-	"io"
 	"math"
-	"slices"
-	"strconv"
-	"strings"
-	"text/tabwriter"
 )
 
 // Entry is one destination of the incident light: a share per wavelength, and
-// how well it is known. The three uncertainties follow different rules and are
-// kept apart; a nil slice stands for zeros.
+// how well it is known. The uncertainties follow different rules and are kept
+// apart; a nil slice stands for zeros.
 type Entry struct {
-	Name  string
+	Name  string    // not empty, once per ledger
 	Share []float64 // 0..1 at each wavelength of the ledger
 
-	Bound    []float64 // numerical error bound of each share; bounds add up
-	StdError []float64 // statistical standard error of each share, independent between wavelengths
-	Data     []float64 // standard uncertainty from the data, fully correlated between wavelengths
+	Bound           []float64 // numerical error bound of each share; bounds add up
+	StdError        []float64 // statistical standard error of each share, independent between wavelengths
+	Data            []float64 // standard uncertainty of each share from the data, fully correlated between wavelengths
+	DataIndependent bool      // Data is independent between wavelengths instead
+	IntegralBound   float64   // mA/cm², numerical error bound of the current itself, for example Samples.Bound; >= 0
 }
 
 // Ledger holds the shares of all destinations. At every wavelength they must add
@@ -29,6 +25,8 @@ type Ledger struct {
 	Spectrum   Spectrum
 	Wavelength []float64 // nm, strictly ascending, inside the spectrum
 	Entries    []Entry
+	Tolerance  float64   // of the sum of shares at each wavelength, >= 0; 0 means ClosureTolerance
+	Weights    []float64 // mA/cm² per share at each wavelength; nil for shares that are linear in between, else for example Samples.Weights
 }
 
 // Row is one line of an [Account]. Shares are those of the incident photons
@@ -38,9 +36,9 @@ type Row struct {
 	Share   float64
 	Current float64
 
-	Bound    float64 // numerical error bound of Current
-	StdError float64 // statistical standard error of Current
-	Data     float64 // standard uncertainty of Current from the data
+	Bound    float64 // numerical error bound of Current: the sum over wavelengths, and IntegralBound
+	StdError float64 // statistical standard error of Current: root of the sum of squares over wavelengths
+	Data     float64 // standard uncertainty of Current from the data: the sum, or root of the sum of squares if independent
 	Combined float64 // Bound + sqrt(StdError² + Data²)
 }
 
@@ -48,7 +46,7 @@ type Row struct {
 type Account struct {
 	Rows     []Row
 	Incident float64 // mA/cm² of one electron per incident photon, from the spectrum alone
-	Total    Row     // sum of all rows; its uncertainties are those of the sum of independent rows
+	Total    Row     // sum of all rows, without uncertainties: those of the rows cancel since shares add up to 1
 	Closure  float64 // largest |sum of shares - 1| over the wavelengths
 }
 
@@ -56,72 +54,124 @@ type Account struct {
 const (
 	ClosureTolerance = 1e-9  // of the sum of shares at one wavelength
 	shareRounding    = 1e-12 // by which a share may miss 0..1
+	weightsTolerance = 1e-9  // by which weights from elsewhere may miss the incident current, relative
 )
 
 // Integrate returns the account of the ledger. The integral is exact for shares
-// that are linear between the wavelengths.
+// that are linear between the wavelengths, or what the ledger's own weights make
+// of it. The combination of uncertainties is that of the Guide to the Expression of
+// Uncertainty in Measurement (JCGM 100:2008, section 5) for standard
+// uncertainties; a numerical bound is no standard uncertainty and is added.
 //
-// Errors: [ErrInput] for lengths, order and values (a share below 0 or above 1,
-// a negative uncertainty), [ErrRange] for wavelengths outside the spectrum,
-// [ErrBalance] where the shares miss 1 by more than [ClosureTolerance].
+// Errors: [ErrInput] for lengths, order and values (a share below 0 or above 1 by
+// more than 1e-12, a negative uncertainty, a name that is missing or comes twice,
+// weights that do not add up to the incident current), [ErrRange] for wavelengths
+// outside the spectrum, [ErrBalance] where the shares miss 1 by more than the
+// tolerance.
 func (l Ledger) Integrate() (Account, error) {
-	w, err := Weights(nil, l.Spectrum, l.Wavelength, Photons)
+	weights, incident, err := l.weights()
 	if err != nil {
 		return Account{}, err
 	}
-	if len(l.Entries) == 0 {
-		return Account{}, fmt.Errorf("spectrum: ledger: no entries: %w", ErrInput)
-	}
-	sum := make([]float64, len(w))
-	var acc Account
-	ends := []float64{l.Wavelength[0], l.Wavelength[len(w)-1]}
-	if acc.Incident, err = Photocurrent(l.Spectrum, ends, []float64{1, 1}); err != nil {
-		return Account{}, err
-	}
-	if acc.Incident == 0 {
-		return Account{}, fmt.Errorf("spectrum: ledger: no light between %g nm and %g nm: %w", ends[0], ends[1], ErrInput)
-	}
-	for _, e := range l.Entries {
+	acc := Account{Incident: incident, Total: Row{Name: "total"}}
+	seen := map[string]bool{}
+	for i, e := range l.Entries {
+		if e.Name == "" || seen[e.Name] {
+			return Account{}, fmt.Errorf("spectrum: ledger: entry %d: name %q is empty or comes twice: %w", i, e.Name, ErrInput)
+		}
+		seen[e.Name] = true
 		if err := e.check(l.Wavelength); err != nil {
 			return Account{}, fmt.Errorf("spectrum: ledger: %s: %w", e.Name, err)
 		}
-		row := Row{Name: e.Name, Current: dot(w, e.Share)}
-		row.Share = row.Current / acc.Incident
-		row.Bound, row.Data = weighed(w, e.Bound), weighed(w, e.Data)
-		for i, v := range e.StdError {
-			row.StdError = math.Hypot(row.StdError, w[i]*v)
-		}
-		row.combine()
+		row := e.row(weights)
+		row.Share = row.Current / incident
 		acc.Rows = append(acc.Rows, row)
-		for i, v := range e.Share {
-			sum[i] += v
-		}
-		t := &acc.Total
-		t.Share += row.Share
-		t.Current += row.Current
-		t.Bound += row.Bound
-		t.StdError, t.Data = math.Hypot(t.StdError, row.StdError), math.Hypot(t.Data, row.Data)
+		acc.Total.Current += row.Current
 	}
-	acc.Total.Name = "total"
-	acc.Total.combine()
-	for i, v := range sum {
-		if dev := math.Abs(v - 1); dev > acc.Closure {
-			acc.Closure = dev
-			if dev > ClosureTolerance {
-				return Account{}, fmt.Errorf("spectrum: ledger: at %g nm the shares add up to %.12g: %w", l.Wavelength[i], v, ErrBalance)
-			}
-		}
+	acc.Total.Share = acc.Total.Current / incident
+	acc.Closure, err = l.closure()
+	if err != nil {
+		return Account{}, err
 	}
 	return acc, nil
 }
 
-func (r *Row) combine() { r.Combined = r.Bound + math.Hypot(r.StdError, r.Data) }
-
-func weighed(w, v []float64) float64 {
-	if v == nil {
-		return 0
+// weights returns the weight of each wavelength and the current of all photons.
+func (l Ledger) weights() (w []float64, incident float64, err error) {
+	if len(l.Entries) == 0 {
+		return nil, 0, fmt.Errorf("spectrum: ledger: no entries: %w", ErrInput)
 	}
-	return dot(w, v)
+	w, err = Weights(nil, l.Spectrum, l.Wavelength, Photons)
+	if err != nil {
+		return nil, 0, err
+	}
+	first, last := l.Wavelength[0], l.Wavelength[len(w)-1]
+	// On two wavelengths only, so that it does not hang on the grid of the shares.
+	incident, err = Photocurrent(l.Spectrum, []float64{first, last}, []float64{1, 1})
+	if err != nil {
+		return nil, 0, err
+	}
+	if incident == 0 {
+		return nil, 0, fmt.Errorf("spectrum: ledger: no light between %g nm and %g nm: %w", first, last, ErrInput)
+	}
+	if l.Weights == nil {
+		return w, incident, nil
+	}
+	if err := checkValues("weights", l.Weights, l.Wavelength); err != nil {
+		return nil, 0, fmt.Errorf("spectrum: ledger: %w", err)
+	}
+	sum := 0.0
+	for _, v := range l.Weights {
+		sum += v
+	}
+	if !(math.Abs(sum-incident) <= weightsTolerance*incident) {
+		return nil, 0, fmt.Errorf("spectrum: ledger: the weights add up to %.12g mA/cm², the incident current is %.12g: %w", sum, incident, ErrInput)
+	}
+	return l.Weights, incident, nil
+}
+
+// closure returns the largest |sum of shares - 1|, an error if it is too large.
+func (l Ledger) closure() (float64, error) {
+	tolerance := l.Tolerance
+	if tolerance == 0 {
+		tolerance = ClosureTolerance
+	}
+	if !amount(tolerance) {
+		return 0, fmt.Errorf("spectrum: ledger: tolerance %g is negative or not finite: %w", tolerance, ErrInput)
+	}
+	worst := 0.0
+	for i, wl := range l.Wavelength {
+		sum := 0.0
+		for _, e := range l.Entries {
+			sum += e.Share[i]
+		}
+		if dev := math.Abs(sum - 1); dev > tolerance {
+			return 0, fmt.Errorf("spectrum: ledger: at %g nm the shares add up to %.12g: %w", wl, sum, ErrBalance)
+		}
+		worst = max(worst, math.Abs(sum-1))
+	}
+	return worst, nil
+}
+
+// row integrates an entry that was checked. Weights of a rule that oscillates
+// may be negative: bounds take their size.
+func (e Entry) row(weights []float64) Row {
+	r := Row{Name: e.Name, Current: dot(weights, e.Share), Bound: e.IntegralBound}
+	for i, v := range e.Bound {
+		r.Bound += math.Abs(weights[i]) * v
+	}
+	for i, v := range e.StdError {
+		r.StdError = math.Hypot(r.StdError, weights[i]*v)
+	}
+	for i, v := range e.Data {
+		if e.DataIndependent {
+			r.Data = math.Hypot(r.Data, weights[i]*v)
+		} else {
+			r.Data += math.Abs(weights[i]) * v
+		}
+	}
+	r.Combined = r.Bound + math.Hypot(r.StdError, r.Data)
+	return r
 }
 
 func (e Entry) check(wavelength []float64) error {
@@ -133,7 +183,10 @@ func (e Entry) check(wavelength []float64) error {
 			return fmt.Errorf("share at %g nm: %g is not between 0 and 1: %w", wavelength[i], v, ErrInput)
 		}
 	}
-	for _, u := range []struct {
+	if !amount(e.IntegralBound) {
+		return fmt.Errorf("bound of the integral: %g is negative or not finite: %w", e.IntegralBound, ErrInput)
+	}
+	for _, u := range [3]struct {
 		name   string
 		values []float64
 	}{{"bound", e.Bound}, {"standard error", e.StdError}, {"data uncertainty", e.Data}} {
@@ -152,7 +205,7 @@ func (e Entry) check(wavelength []float64) error {
 	return nil
 }
 
-// Find returns the row with a name.
+// Find returns the row with a name, and whether there is one.
 func (a Account) Find(name string) (Row, bool) {
 	for _, r := range a.Rows {
 		if r.Name == name {
@@ -161,122 +214,3 @@ func (a Account) Find(name string) (Row, bool) {
 	}
 	return Row{}, false
 }
-
-// WriteAccounts writes accounts of the same destinations side by side as plain
-// text: for each title the share of the incident photons, the current density
-// in mA/cm² and, where any is known, its combined uncertainty.
-func WriteAccounts(w io.Writer, titles []string, accounts []Account) error {
-	if len(titles) != len(accounts) || len(accounts) == 0 {
-		return fmt.Errorf("spectrum: %d titles for %d accounts: %w", len(titles), len(accounts), ErrInput)
-	}
-	var names []string
-	seen := map[string]bool{}
-	uncertain := false
-	for _, a := range accounts {
-		uncertain = uncertain || a.Total.Combined > 0
-		for _, r := range a.Rows {
-			if !seen[r.Name] {
-				seen[r.Name] = true
-				names = append(names, r.Name)
-			}
-		}
-	}
-	t := tabwriter.NewWriter(w, 0, 0, 2, ' ', tabwriter.AlignRight)
-	cells := func(first string, cell func(i int) []string) {
-		fmt.Fprint(t, first, "\t")
-		for i := range accounts {
-			for _, c := range cell(i) {
-				fmt.Fprint(t, c, "\t")
-			}
-		}
-		fmt.Fprintln(t)
-	}
-	columns := func(r Row) []string {
-		out := []string{fmt.Sprintf("%.4f", r.Share), fmt.Sprintf("%.3f", r.Current)}
-		if uncertain {
-			out = append(out, fmt.Sprintf("%.3f", r.Combined))
-		}
-		return out
-	}
-	cells("", func(i int) []string {
-		out := []string{titles[i], ""}
-		if uncertain {
-			out = append(out, "")
-		}
-		return out
-	})
-	cells("destination", func(int) []string {
-		out := []string{"share", "mA/cm²"}
-		if uncertain {
-			out = append(out, "+-")
-		}
-		return out
-	})
-	for _, name := range names {
-		cells(name, func(i int) []string {
-			r, ok := accounts[i].Find(name)
-			if !ok {
-				return columns(Row{})
-			}
-			return columns(r)
-		})
-	}
-	cells("total", func(i int) []string { return columns(accounts[i].Total) })
-	cells("incident", func(i int) []string { return columns(Row{Share: 1, Current: accounts[i].Incident}) })
-	cells("closure error", func(i int) []string {
-		out := []string{fmt.Sprintf("%.1e", accounts[i].Closure), fmt.Sprintf("%.1e", math.Abs(accounts[i].Total.Current-accounts[i].Incident))}
-		if uncertain {
-			out = append(out, "")
-		}
-		return out
-	})
-	return t.Flush()
-}
-
-// WriteShares writes the shares of ledgers over the same wavelengths as CSV, one
-// line per wavelength: the wavelength in nm, the incident photon flux in
-// cm^-2 s^-1 nm^-1, and for each title the share of each entry and, where it is
-// known, its standard error.
-func WriteShares(w io.Writer, titles []string, ledgers []Ledger) error {
-	if len(titles) != len(ledgers) || len(ledgers) == 0 {
-		return fmt.Errorf("spectrum: %d titles for %d ledgers: %w", len(titles), len(ledgers), ErrInput)
-	}
-	record := []string{"wavelength_nm", "photons_per_cm2_s_nm"}
-	var columns [][]float64
-	for i, l := range ledgers {
-		if _, err := l.Integrate(); err != nil {
-			return err
-		}
-		if !slices.Equal(l.Wavelength, ledgers[0].Wavelength) {
-			return fmt.Errorf("spectrum: ledgers %q and %q have different wavelengths: %w", titles[0], titles[i], ErrInput)
-		}
-		for _, e := range l.Entries {
-			name := strings.ReplaceAll(strings.TrimSpace(titles[i]+" "+e.Name), " ", "_")
-			record, columns = append(record, name), append(columns, e.Share)
-			if e.StdError != nil {
-				record, columns = append(record, name+"_stderr"), append(columns, e.StdError)
-			}
-		}
-	}
-	out := csv.NewWriter(w)
-	if err := out.Write(record); err != nil {
-		return err
-	}
-	for i, wl := range ledgers[0].Wavelength {
-		irradiance, err := ledgers[0].Spectrum.At(wl)
-		if err != nil {
-			return err
-		}
-		record = append(record[:0], number(wl), number(photonsPerIrradiance*irradiance*wl))
-		for _, c := range columns {
-			record = append(record, number(c[i]))
-		}
-		if err := out.Write(record); err != nil {
-			return err
-		}
-	}
-	out.Flush()
-	return out.Error()
-}
-
-func number(v float64) string { return strconv.FormatFloat(v, 'g', 8, 64) }
