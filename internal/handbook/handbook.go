@@ -19,6 +19,8 @@ var quantities = map[string]func(check.Row) (float64, error){
 	"optics":    opticsQuantity,
 	"spectrum":  spectrumQuantity,
 	"lighttrap": lighttrapQuantity,
+	// Values that need several packages.
+	"integration": integrationQuantity,
 }
 
 // Load returns all rows of the files in dir whose names begin with prefix.

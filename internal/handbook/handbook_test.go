@@ -1,0 +1,8 @@
+package handbook
+
+import "testing"
+
+// TestIntegration computes the published values that need several packages.
+func TestIntegration(t *testing.T) {
+	Check(t, "../../testdata/handbook", "integration_")
+}
