@@ -57,7 +57,7 @@ func (s *Solver) Amplitudes(st Stack, w Wave) (Amplitudes, error) {
 	f := &g.fields[0]
 	q0 := bl.front.qr[0]
 	pass := math.Sqrt(g.passed(0))
-	a.TS = complex(2*q0*pass, 0) / complex(q0*f.ur[0]+f.vr[0], q0*f.ui[0]+f.vi[0])
+	a.TS = complex(2*q0*pass, 0) / complex(q0*f[0].ur[0]+f[0].vr[0], q0*f[0].ui[0]+f[0].vi[0])
 	if normal {
 		a.RP, a.TP = -a.RS, a.TS
 		return a, nil
@@ -68,7 +68,7 @@ func (s *Solver) Amplitudes(st Stack, w Wave) (Amplitudes, error) {
 	// derived: the p fields start at the back with E = q, and E of a p wave is
 	// its tangential part over cosθ.
 	a.TP = complex(2*n0*q0*pass, 0) * st.Back /
-		complex(n0*n0*f.xr[0]+q0*f.yr[0], n0*n0*f.xi[0]+q0*f.yi[0])
+		complex(n0*n0*f[1].ur[0]+q0*f[1].vr[0], n0*n0*f[1].ui[0]+q0*f[1].vi[0])
 	return a, nil
 }
 

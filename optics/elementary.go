@@ -3,8 +3,10 @@ package optics
 import "math"
 
 // Elementary functions over rows of numbers, branch-free so that the loops
-// stay in the arithmetic units. Accuracy is measured in elementary_test.go:
-// about one unit in the last place in the range used by the film kernel.
+// stay in the arithmetic units and can be turned into vector instructions.
+// Products that are added to something are rounded by a conversion, as in
+// kernel.go. Accuracy is measured in elementary_test.go: about one unit in the
+// last place in the range used by the film kernel.
 
 // Cody-Waite reduction by π/2: three parts of 33 bits, so that the products
 // with an integer below 2^20 are exact (the splitting of W. J. Cody and
@@ -18,7 +20,7 @@ const (
 	// Adding and subtracting 1.5 · 2^52 rounds to the nearest integer.
 	roundMagic = 3 << 51
 
-	maxFastPhase = 1 << 20 // rad; larger arguments take math.Sincos
+	maxFastPhase = 1 << 20 // rad; larger phases take math.Sincos, see correctLane
 )
 
 // Minimax coefficients of sin and cos on [-π/4, π/4], relative error below
@@ -39,23 +41,22 @@ const (
 	cos14 = -1.13596475577881948265e-11
 )
 
-// sincosRow stores the sine and cosine of each x >= 0.
+// sincosRow stores the sine and cosine of each x with 0 <= x <= maxFastPhase;
+// those of larger x are meaningless.
 func sincosRow(sin, cos, x []float64) {
 	sin = sin[:len(x)]
 	cos = cos[:len(x)]
 	for i, v := range x {
-		if v > maxFastPhase {
-			sin[i], cos[i] = math.Sincos(v)
-			continue
-		}
-		t := v*twoOverPi + roundMagic
+		t := float64(v*twoOverPi) + roundMagic
 		q := math.Float64bits(t)
 		f := t - roundMagic
-		r := ((v - f*pio2a) - f*pio2b) - f*pio2c
-		z := r * r
-		z2 := z * z
-		s := r + r*z*((sin3+z*sin5)+z2*((sin7+z*sin9)+z2*(sin11+z*sin13)))
-		c := (1 - 0.5*z) + z2*((cos4+z*cos6)+z2*((cos8+z*cos10)+z2*(cos12+z*cos14)))
+		r := ((v - float64(f*pio2a)) - float64(f*pio2b)) - float64(f*pio2c)
+		z := float64(r * r)
+		z2 := float64(z * z)
+		s := r + float64(r*z*((sin3+float64(z*sin5))+
+			float64(z2*((sin7+float64(z*sin9))+float64(z2*(sin11+float64(z*sin13)))))))
+		c := (1 - 0.5*z) + float64(z2*((cos4+float64(z*cos6))+
+			float64(z2*((cos8+float64(z*cos10))+float64(z2*(cos12+float64(z*cos14)))))))
 		// The two low bits of q are the quadrant: odd ones exchange sine and
 		// cosine, the others set the signs.
 		sb, cb := math.Float64bits(s), math.Float64bits(c)
@@ -100,15 +101,16 @@ func expRow(e, m, z []float64) {
 		if v < minExponent {
 			v = minExponent
 		}
-		t := v*log2e + roundMagic
+		t := float64(v*log2e) + roundMagic
 		f := t - roundMagic
-		r := (v - f*ln2a) - f*ln2b
-		r2 := r * r
-		r4 := r2 * r2
-		p := r + r2*(((0.5+r*inv3)+r2*(inv4+r*inv5))+
-			r4*(((inv6+r*inv7)+r2*(inv8+r*inv9))+r4*((inv10+r*inv11)+r2*(inv12+r*inv13))))
+		r := (v - float64(f*ln2a)) - float64(f*ln2b)
+		r2 := float64(r * r)
+		r4 := float64(r2 * r2)
+		p := r + float64(r2*(((0.5+float64(r*inv3))+float64(r2*(inv4+float64(r*inv5))))+
+			float64(r4*(((inv6+float64(r*inv7))+float64(r2*(inv8+float64(r*inv9))))+
+				float64(r4*((inv10+float64(r*inv11))+float64(r2*(inv12+float64(r*inv13)))))))))
 		scale := math.Float64frombits((math.Float64bits(t) + 1023) << 52)
-		e[i] = scale + scale*p
-		m[i] = (1 - scale) - scale*p
+		e[i] = scale + float64(scale*p)
+		m[i] = (1 - scale) - float64(scale*p)
 	}
 }

@@ -149,20 +149,6 @@ func (s *GradientSolver) forward(r *Response, st Stack, w Wave) (normal bool, er
 	return normal, nil
 }
 
-// respond copies lane 0 of the solved block.
-func (s *Solver) respond(r *Response, films int, ws, wp float64) {
-	bl := &s.block
-	r.A = grow(r.A, films)
-	r.R, r.T = bl.mean(&bl.r, ws, wp), bl.mean(&bl.t, ws, wp)
-	for j := range r.A {
-		a := ws * bl.a[0][j*lanes]
-		if wp > 0 {
-			a += wp * bl.a[1][j*lanes]
-		}
-		r.A[j] = a
-	}
-}
-
 // backward runs one reverse pass over the solved lane 0.
 func (s *GradientSolver) backward(dst *Gradient, st Stack, w Wave, weights Weights, normal bool) error {
 	rv, bl := &s.reverse, &s.solver.block

@@ -81,10 +81,7 @@ func (rv *reversal) pull(g *group, w *waveRow, films *filmTable, wt *[2]groupWei
 
 // fields returns the rows of the fields of polarisation p.
 func (f *fieldRow) polarized(p int) (ur, ui, vr, vi *[lanes]float64) {
-	if p == 0 {
-		return &f.ur, &f.ui, &f.vr, &f.vi
-	}
-	return &f.xr, &f.xi, &f.yr, &f.yi
+	return &f[p].ur, &f[p].ui, &f[p].vr, &f[p].vi
 }
 
 // amplitude returns h and l of the incident amplitude hU + lV.
@@ -176,7 +173,7 @@ func (rv *reversal) step(g *group, w *waveRow, p, j, film, b int, wt *groupWeigh
 		b = lanes
 	}
 	dd, xr, xi := rv.dd[at:at+b], rv.xr[at:at+b], rv.xi[at:at+b]
-	rest, weight := s.rest[j*lanes:j*lanes+b], rv.a[p][at:at+b]
+	rest, weight, absorbed := s.rest[j*lanes:j*lanes+b], rv.a[p][at:at+b], g.a[p][j*lanes:j*lanes+b]
 	for i := range dd {
 		dur, dui, dvr, dvi := s.dur[i], s.dui[i], s.dvr[i], s.dvi[i]
 		wr, wi, f := s.wr[i], s.wi[i], -2*rest[i]
@@ -196,6 +193,10 @@ func (rv *reversal) step(g *group, w *waveRow, p, j, film, b int, wt *groupWeigh
 			// The form y U² - x V² is that behind the film times e.
 			zr := e * (yr*(ur*ur-ui*ui) - 2*yi*ur*ui - xxr*(vr*vr-vi*vi) + 2*xxi*vr*vi)
 			zi := e * (2*yr*ur*ui + yi*(ur*ur-ui*ui) - 2*xxr*vr*vi - xxi*(vr*vr-vi*vi))
+			// The film's own share from the same fields as the term with V* below,
+			// which it nearly cancels: a has roundings of its own.
+			own := hur*hvr + hui*hvi - e*(ur*vr+ui*vi)
+			f -= 2 * wt.flux[i] * weight[i] * (s.gain[i]*own - absorbed[i])
 			thr = wr*zr - wi*zi + f*(dur*xvr-dui*xvi+dvr*yur-dvi*yui)
 			thi = wr*zi + wi*zr + f*(dur*xvi+dui*xvr+dvr*yui+dvi*yur)
 		}

@@ -125,12 +125,7 @@ func (gw *gradientWorker) run(dst *SweepGradient, r *SweepResponse, partial []fl
 			if normal {
 				ws, wp = 1, 0
 			}
-			cos := math.Cos(angle)
-			bl.setAngle(angle)
-			for i := range b {
-				bl.setWave(i, s.Wavelength[w0+i], s.Front[w0+i], cos)
-				bl.setBack(i, s.BackN[w0+i], s.BackK[w0+i])
-			}
+			bl.load(angle, s.Wavelength[w0:][:b], s.Front[w0:], s.BackN[w0:], s.BackK[w0:])
 			bl.solve(&table, b, normal)
 			weigh(r.R[a*w+w0:][:b], bl.r[0][:], bl.r[1][:], ws, wp)
 			weigh(r.T[a*w+w0:][:b], bl.t[0][:], bl.t[1][:], ws, wp)

@@ -11,6 +11,21 @@ const lanes = 32
 // |q| = 1e-100 is indistinguishable from one at its critical angle.
 const tinyRoot = 1e-100
 
+// The row functions of this file and of elementary.go are the kernel. Each is
+// one loop without branches over the lanes of a block, which gen/ also turns
+// into vector instructions. For that the bits must not depend on whether a
+// processor can fuse a product with a sum: every product that is added to
+// something is rounded by an explicit conversion, most of them in mulRe, mulIm,
+// dot and cross.
+
+// mulRe and mulIm return the real and the imaginary part of a b.
+func mulRe(ar, ai, br, bi float64) float64 { return float64(ar*br) - float64(ai*bi) }
+func mulIm(ar, ai, br, bi float64) float64 { return float64(ar*bi) + float64(ai*br) }
+
+// dot and cross return the real and the imaginary part of a b*.
+func dot(ar, ai, br, bi float64) float64   { return float64(ar*br) + float64(ai*bi) }
+func cross(ar, ai, br, bi float64) float64 { return float64(ai*br) - float64(ar*bi) }
+
 // waveRow holds what the waves of one block have in common for all films.
 type waveRow struct {
 	wavelength [lanes]float64 // nm
@@ -18,32 +33,46 @@ type waveRow struct {
 	n0         [lanes]float64 // index of the front medium
 	q0sq       [lanes]float64 // (n0 cosθ)²
 
-	sinSq twofold // sin²θ, the same for all lanes
+	angle angle // of all waves
 }
 
-// fieldRow holds the tangential fields at one interface: E and H as u and v
-// for s, as x and y for p, real and imaginary parts.
-type fieldRow struct {
+// fieldRow holds the fields at one interface: of s and of p light.
+type fieldRow [2]polarRow
+
+// polarRow holds the scaled tangential fields E and H of one polarisation, as
+// u and v: real and imaginary parts.
+type polarRow struct {
 	ur, ui, vr, vi [lanes]float64
-	xr, xi, yr, yi [lanes]float64
 }
 
-// filmRow is the work of one film on one block: the optical path of each wave
-// and the parts of its complex phase factor.
+// filmRow is the work of one film on one block: the optical path of each wave,
+// the parts of its complex phase factor and what they do to the fields.
 type filmRow struct {
+	kd       [lanes]float64 // k0 d
 	qr, qi   [lanes]float64 // normal wave number over k0, Im q >= 0
 	kr       [lanes]float64 // Re q²
 	phase    [lanes]float64 // x = k0 d Re q
 	decay    [lanes]float64 // -2y = -2 k0 d Im q
 	sin, cos [lanes]float64 // of x
 	m        [lanes]float64 // 1 - exp(-2y)
+
+	cr, ci [lanes]float64 // C
+	matrix [2]matrixRow   // of s and p
+}
+
+// matrixRow is the part of a film's matrix that depends on the polarisation,
+// and the form that gives its loss.
+type matrixRow struct {
+	ar, ai         [lanes]float64 // S/η
+	br, bi         [lanes]float64 // S η
+	uu, vv, vu, wu [lanes]float64 // factors of |U|², |V|², Re VU*, Im VU*
 }
 
 // normalWave returns q = sqrt(q²) with Im q >= 0, Re q >= 0 and Re q² for the
 // index n + ik. The difference form of q² keeps its digits at critical angles;
 // derived: n² - k² - n0² sin²θ = (n-n0)(n+n0) - k² + (n0 cosθ)².
 func normalWave(n, k, n0, q0sq float64) (qr, qi, kr float64) {
-	kr = (n-n0)*(n+n0) - k*k + q0sq
+	kr = float64((n-n0)*(n+n0)) - float64(k*k) + q0sq
 	qr, qi = rootUpper(kr, 2*n*k)
 	return qr, qi, kr
 }
@@ -51,7 +80,7 @@ func normalWave(n, k, n0, q0sq float64) (qr, qi, kr float64) {
 // rootUpper returns the square root of kr + i ki, ki >= 0, with Im >= 0 and
 // Re >= 0.
 func rootUpper(kr, ki float64) (qr, qi float64) {
-	t := math.Sqrt(0.5 * (math.Sqrt(kr*kr+ki*ki) + math.Abs(kr)))
+	t := math.Sqrt(0.5 * (math.Sqrt(float64(kr*kr)+float64(ki*ki)) + math.Abs(kr)))
 	if t < tinyRoot {
 		t = tinyRoot
 	}
@@ -62,106 +91,158 @@ func rootUpper(kr, ki float64) (qr, qi float64) {
 	return u, t
 }
 
-// crossOblique carries the fields of a block from the back of a film to its
-// front, both polarisations. in and out may be the same row. d is the
-// thickness in nm; e receives exp(-2y), as and ap the flux that stays in the
-// film in units of the scaled fields at its front.
-//
-// With C = exp(-y) cos(x+iy), S = -i exp(-y) sin(x+iy) and the admittance η,
-// U' = C U + (S/η) V and V' = S η U + C V. Nothing grows, because the factor
-// exp(-y) is taken out and remembered in e.
-func crossOblique(f *filmRow, w *waveRow, in, out *fieldRow, n, k []float64, d float64, e, as, ap []float64) {
+// pathRow finds the optical path of a film from its index and kd at oblique
+// incidence. It reports whether a phase is long.
+func pathRow(f *filmRow, w *waveRow, n, k []float64) (long bool) {
 	b := len(n)
 	if b > lanes {
 		b = lanes
 	}
-	n, k, e, as, ap = n[:b], k[:b], e[:b], as[:b], ap[:b]
+	n, k = n[:b], k[:b]
 	for i := range n {
-		qr, qi, kr := normalWave(n[i], k[i], w.n0[i], w.q0sq[i])
-		kd := w.k0[i] * d
+		kr := float64((n[i]-w.n0[i])*(n[i]+w.n0[i])) - float64(k[i]*k[i]) + w.q0sq[i]
+		qr, qi := rootUpper(kr, 2*n[i]*k[i])
+		x := f.kd[i] * qr
 		f.qr[i], f.qi[i], f.kr[i] = qr, qi, kr
-		f.phase[i], f.decay[i] = kd*qr, -2*kd*qi
+		f.phase[i], f.decay[i] = x, -2*f.kd[i]*qi
+		if x > longPhase {
+			long = true
+		}
 	}
-	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
-	f.correctPhase(w, n, k, d)
-	expRow(e, f.m[:b], f.decay[:b])
+	return long
+}
+
+// normalPathRow is pathRow at normal incidence, where q is the index itself.
+func normalPathRow(f *filmRow, n, k []float64) (long bool) {
+	b := len(n)
+	if b > lanes {
+		b = lanes
+	}
+	n, k = n[:b], k[:b]
 	for i := range n {
-		m, ei := f.m[i], e[i]
-		h := 0.5 * m
-		p := 1 - h
-		cr, ci := f.cos[i]*p, -f.sin[i]*h
-		sr, si := f.cos[i]*h, -f.sin[i]*p
+		x := f.kd[i] * n[i]
+		f.phase[i], f.decay[i] = x, -2*f.kd[i]*k[i]
+		if x > longPhase {
+			long = true
+		}
+	}
+	return long
+}
+
+// matrixRows finds the matrices of a film for both polarisations.
+//
+// With C = exp(-y) cos(x+iy), S = -i exp(-y) sin(x+iy) and the admittance η,
+// the fields in front are U' = C U + (S/η) V and V' = S η U + C V. Nothing
+// grows, because the factor exp(-y) is taken out and remembered in e = exp(-2y).
+// s has η = q and p has η = ε/q; dividing S by q first costs no digits where q
+// vanishes.
+//
+// derived: the flux that stays in the film, Re(U'V'*) - e Re(UV*), is
+//
+//	(P Re η + Q Im η) |U|² + [(P Re η - Q Im η) |V|² +
+//	2 (M (Re η)² - E (Im η)²) Re VU* + 2 (M + E) Re η Im η Im VU*] / |η|²
+//
+// with P = m(1+e)/4, Q = e sin x cos x, M = m²/4, E = e sin² x. Every factor is of
+// the order of Im η or m, so that tiny absorptances keep their relative
+// accuracy, and vanishes where k = 0.
+func matrixRows(f *filmRow, n, k, e []float64) {
+	b := len(n)
+	if b > lanes {
+		b = lanes
+	}
+	n, k, e = n[:b], k[:b], e[:b]
+	s, p := &f.matrix[0], &f.matrix[1]
+	for i := range n {
+		h := 0.5 * f.m[i]
+		g := 1 - h
+		sr, si := f.cos[i]*h, -f.sin[i]*g
+		f.cr[i], f.ci[i] = f.cos[i]*g, -f.sin[i]*h
+		es := e[i] * f.sin[i]
+		lp, lq := h*g, es*f.cos[i]
+		lm, le := float64(h*h), float64(es*f.sin[i])
+		sum := lm + le
+
 		qr, qi, kr := f.qr[i], f.qi[i], f.kr[i]
-		er, ee := (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i]
-		em, q2 := er*er+ee*ee, qr*qr+qi*qi
-		iq, ie := 1/q2, 1/em
-		ar, ai := (sr*qr+si*qi)*iq, (si*qr-sr*qi)*iq // σ = S/q
-		br, bi := ar*kr-ai*ee, ar*ee+ai*kr           // σ q²
-		gr, gi := (br*er+bi*ee)*ie, (bi*er-br*ee)*ie // σ q²/ε
-		hr, hi := ar*er-ai*ee, ar*ee+ai*er           // σ ε
+		er, ei := (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i]
+		e2 := float64(er*er) + float64(ei*ei)
+		qr2, qi2 := float64(qr*qr), float64(qi*qi)
+		q2 := qr2 + qi2
+		inv := 1 / (e2 * q2)
+		iq, ie := inv*e2, inv*q2
 
-		ur, ui, vr, vi := in.ur[i], in.ui[i], in.vr[i], in.vi[i]
-		fb := ei * (ur*vr + ui*vi)
-		tr, ti := cr*ur-ci*ui+ar*vr-ai*vi, cr*ui+ci*ur+ar*vi+ai*vr
-		zr, zi := cr*vr-ci*vi+br*ur-bi*ui, cr*vi+ci*vr+br*ui+bi*ur
-		out.ur[i], out.ui[i], out.vr[i], out.vi[i] = tr, ti, zr, zi
-		f1, f2 := tr*zr, ti*zi
-		a := f1 + f2 - fb
-		if a < cancelling*(math.Abs(f1)+math.Abs(f2)) {
-			a = filmLoss(qr, qi, ee, m, ei, f.sin[i], f.cos[i], ur, ui, vr, vi)
-		}
-		as[i] = a
+		ar, ai := dot(sr, si, qr, qi)*iq, cross(sr, si, qr, qi)*iq // σ = S/q
+		br, bi := mulRe(ar, ai, kr, ei), mulIm(ar, ai, kr, ei)     // σ q²
+		s.ar[i], s.ai[i], s.br[i], s.bi[i] = ar, ai, br, bi
+		pr, qq := float64(lp*qr), float64(lq*qi)
+		s.uu[i], s.vv[i] = pr+qq, (pr-qq)*iq
+		s.vu[i] = 2 * (float64(lm*qr2) - float64(le*qi2)) * iq
+		s.wu[i] = sum * ei * iq
 
-		ur, ui, vr, vi = in.xr[i], in.xi[i], in.yr[i], in.yi[i]
-		fb = ei * (ur*vr + ui*vi)
-		tr, ti = cr*ur-ci*ui+gr*vr-gi*vi, cr*ui+ci*ur+gr*vi+gi*vr
-		zr, zi = cr*vr-ci*vi+hr*ur-hi*ui, cr*vi+ci*vr+hr*ui+hi*ur
-		out.xr[i], out.xi[i], out.yr[i], out.yi[i] = tr, ti, zr, zi
-		f1, f2 = tr*zr, ti*zi
-		a = f1 + f2 - fb
-		if a < cancelling*(math.Abs(f1)+math.Abs(f2)) {
-			a = filmLoss((er*qr+ee*qi)*iq, (ee*qr-er*qi)*iq, ee, m, ei, f.sin[i], f.cos[i], ur, ui, vr, vi)
-		}
-		ap[i] = a
+		p.ar[i], p.ai[i] = dot(br, bi, er, ei)*ie, cross(br, bi, er, ei)*ie // σ q²/ε
+		p.br[i], p.bi[i] = mulRe(ar, ai, er, ei), mulIm(ar, ai, er, ei)     // σ ε
+		hr, hi := dot(er, ei, qr, qi), cross(er, ei, qr, qi)                // η |q|²
+		pr, qq = float64(lp*hr), float64(lq*hi)
+		p.uu[i], p.vv[i] = (pr+qq)*iq, (pr-qq)*ie
+		inv *= 2
+		p.vu[i] = (float64(lm*float64(hr*hr)) - float64(le*float64(hi*hi))) * inv
+		p.wu[i] = sum * hr * hi * inv
 	}
 }
 
-// crossNormal is crossOblique at normal incidence, where both polarisations
-// are the same and q is the index itself.
-func crossNormal(f *filmRow, w *waveRow, in, out *fieldRow, n, k []float64, d float64, e, as []float64) {
+// normalMatrixRow is matrixRows at normal incidence.
+func normalMatrixRow(f *filmRow, n, k, e []float64) {
 	b := len(n)
 	if b > lanes {
 		b = lanes
 	}
-	n, k, e, as = n[:b], k[:b], e[:b], as[:b]
+	n, k, e = n[:b], k[:b], e[:b]
+	s := &f.matrix[0]
 	for i := range n {
-		kd := w.k0[i] * d
-		f.phase[i], f.decay[i] = kd*n[i], -2*kd*k[i]
-	}
-	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
-	f.correctPhase(w, n, k, d)
-	expRow(e, f.m[:b], f.decay[:b])
-	for i := range n {
-		m, ei := f.m[i], e[i]
-		h := 0.5 * m
-		p := 1 - h
-		cr, ci := f.cos[i]*p, -f.sin[i]*h
-		sr, si := f.cos[i]*h, -f.sin[i]*p
+		h := 0.5 * f.m[i]
+		g := 1 - h
+		sr, si := f.cos[i]*h, -f.sin[i]*g
+		f.cr[i], f.ci[i] = f.cos[i]*g, -f.sin[i]*h
+		es := e[i] * f.sin[i]
+		lp, lq := h*g, es*f.cos[i]
+		lm, le := float64(h*h), float64(es*f.sin[i])
+
 		qr, qi := n[i], k[i]
-		iq := 1 / (qr*qr + qi*qi)
-		ar, ai := (sr*qr+si*qi)*iq, (si*qr-sr*qi)*iq // S/N
-		br, bi := sr*qr-si*qi, sr*qi+si*qr           // S N
+		qr2, qi2 := float64(qr*qr), float64(qi*qi)
+		iq := 1 / (qr2 + qi2)
+		s.ar[i], s.ai[i] = dot(sr, si, qr, qi)*iq, cross(sr, si, qr, qi)*iq
+		s.br[i], s.bi[i] = mulRe(sr, si, qr, qi), mulIm(sr, si, qr, qi)
+		pr, qq := float64(lp*qr), float64(lq*qi)
+		s.uu[i], s.vv[i] = pr+qq, (pr-qq)*iq
+		iq *= 2
+		s.vu[i] = (float64(lm*qr2) - float64(le*qi2)) * iq
+		s.wu[i] = (lm + le) * qr * qi * iq
+	}
+}
+
+// fieldsRow carries the fields of one polarisation from the back of a film to
+// its front; in and out may be the same row. a receives the flux that stays in
+// the film in units of the scaled fields at its front. The film's matrix for
+// lane i is at position i+at.
+func fieldsRow(f *filmRow, x *matrixRow, in, out *polarRow, a []float64, at int) {
+	b := len(a)
+	if b > lanes {
+		b = lanes
+	}
+	a = a[:b]
+	for i := range a {
+		j := (i + at) & (lanes - 1)
 		ur, ui, vr, vi := in.ur[i], in.ui[i], in.vr[i], in.vi[i]
-		fb := ei * (ur*vr + ui*vi)
-		tr, ti := cr*ur-ci*ui+ar*vr-ai*vi, cr*ui+ci*ur+ar*vi+ai*vr
-		zr, zi := cr*vr-ci*vi+br*ur-bi*ui, cr*vi+ci*vr+br*ui+bi*ur
-		out.ur[i], out.ui[i], out.vr[i], out.vi[i] = tr, ti, zr, zi
-		f1, f2 := tr*zr, ti*zi
-		a := f1 + f2 - fb
-		if a < cancelling*(math.Abs(f1)+math.Abs(f2)) {
-			a = filmLoss(qr, qi, 2*qr*qi, m, ei, f.sin[i], f.cos[i], ur, ui, vr, vi)
+		cr, ci := f.cr[j], f.ci[j]
+		out.ur[i] = mulRe(cr, ci, ur, ui) + mulRe(x.ar[j], x.ai[j], vr, vi)
+		out.ui[i] = mulIm(cr, ci, ur, ui) + mulIm(x.ar[j], x.ai[j], vr, vi)
+		out.vr[i] = mulRe(cr, ci, vr, vi) + mulRe(x.br[j], x.bi[j], ur, ui)
+		out.vi[i] = mulIm(cr, ci, vr, vi) + mulIm(x.br[j], x.bi[j], ur, ui)
+		loss := float64(x.uu[j]*dot(ur, ui, ur, ui)) + float64(x.vv[j]*dot(vr, vi, vr, vi)) +
+			(float64(x.vu[j]*dot(vr, vi, ur, ui)) + float64(x.wu[j]*cross(vr, vi, ur, ui)))
+		if !(loss > 0) {
+			loss = 0
 		}
-		as[i] = a
+		a[i] = loss
 	}
 }
 
@@ -173,42 +254,21 @@ const longPhase = 256
 // misses.
 func (f *filmRow) correctPhase(w *waveRow, n, k []float64, d float64) {
 	for i := range n {
-		if x := f.phase[i]; x > longPhase {
-			qr, qi, _ := normalWave(n[i], k[i], w.n0[i], w.q0sq[i])
-			miss := phaseError(x, w.wavelength[i], d, n[i], k[i], w.n0[i], qr, qi, w.sinSq)
-			s, c := f.sin[i], f.cos[i]
-			f.sin[i], f.cos[i] = s+miss*c, c-miss*s
-		}
+		f.correctLane(i, w, i, n[i], k[i], d)
 	}
 }
 
-// cancelling is the share of the passing flux below which the difference of
-// two fluxes has lost too many digits and filmLoss replaces it.
-const cancelling = 1.0 / 32
-
-// filmLoss returns the flux that stays in a film of admittance η, computed
-// without a difference of large numbers, so that tiny absorptances keep their
-// relative accuracy. m = 1 - exp(-2y), e = exp(-2y); sin and cos are those of
-// x; u and v are the fields at the back of the film. epsIm = Im ε = 2nk, whose
-// zero means no loss at all.
-//
-// derived: insert U' and V' in Re(U'V'*) - e Re(UV*), use cosh, sinh, cos and
-// sin of 2y and 2x, and collect; every term is then of the order of Im η or m.
-func filmLoss(etaRe, etaIm, epsIm, m, e, sin, cos, ur, ui, vr, vi float64) float64 {
-	if epsIm == 0 {
-		return 0
+// correctLane does that for lane i, which holds wave number l of w.
+func (f *filmRow) correctLane(i int, w *waveRow, l int, n, k, d float64) {
+	x := f.phase[i]
+	if !(x > longPhase) {
+		return
 	}
-	sinh2y := 0.5 * m * (1 + e) // exp(-2y) sinh 2y
-	sin2x := 2 * e * sin * cos  // exp(-2y) sin 2x
-	inv := 1 / (etaRe*etaRe + etaIm*etaIm)
-	wr, wi := ur*vr+ui*vi, vi*ur-vr*ui // V U*
-	s2 := 0.25*m*m + e*sin*sin         // |S|²
-	a := 0.5*(etaRe*sinh2y+etaIm*sin2x)*(ur*ur+ui*ui) +
-		0.5*(etaRe*sinh2y-etaIm*sin2x)*inv*(vr*vr+vi*vi) +
-		(0.5*m*m*etaRe*etaRe-2*e*sin*sin*etaIm*etaIm)*inv*wr +
-		2*s2*etaRe*etaIm*inv*wi
-	if !(a > 0) {
-		return 0
+	if x > maxFastPhase {
+		f.sin[i], f.cos[i] = math.Sincos(x)
 	}
-	return a
+	qr, qi, _ := normalWave(n, k, w.n0[l], w.q0sq[l])
+	miss := phaseError(x, w.wavelength[l], d, n, k, w.n0[l], qr, qi, w.angle.sinSquared())
+	s, c := f.sin[i], f.cos[i]
+	f.sin[i], f.cos[i] = s+miss*c, c-miss*s
 }

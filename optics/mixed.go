@@ -17,7 +17,8 @@ type block struct {
 	history bool
 
 	r, t [2][lanes]float64
-	a    [2][]float64 // [film*lanes+lane]
+	a    [2][]float64 // [film*lanes+lane]; those of the only group or sums
+	sums [2][]float64
 }
 
 // bulkRow holds the intensities in one incoherent film. Index 0 is s, 1 is p.
@@ -53,23 +54,26 @@ func (bl *block) prepare(incoherent []bool, films int) {
 			end = bl.thick[i]
 		}
 		f, r := &bl.forward[i], &bl.reverse[i]
-		f.first, f.count, f.step, f.history = first, end-first, 1, bl.history
-		r.first, r.count, r.step, r.history = end-1, end-first, -1, bl.history
+		f.first, f.count, f.step = first, end-first, 1
+		r.first, r.count, r.step = end-1, end-first, -1
+		f.history, f.mixed, r.history, r.mixed = bl.history, n > 0, bl.history, n > 0
 		first = end + 1
 	}
-	bl.a[0], bl.a[1] = grow(bl.a[0], films*lanes), grow(bl.a[1], films*lanes)
+	if n > 0 {
+		for p := range bl.sums {
+			bl.sums[p] = grow(bl.sums[p], films*lanes)
+		}
+	}
 }
 
 // solve computes R, T and the absorptances of b lanes. The wave rows and the
 // front and back media are set by the caller.
 func (bl *block) solve(films *filmTable, b int, normal bool) {
 	n := len(bl.thick)
+	bl.a = bl.sums
 	for i, j := range bl.thick {
 		nn, kk := films.row(j, b)
-		m := &bl.media[i]
-		for l := range b {
-			m.set(l, nn[l], kk[l], bl.wave.n0[l], bl.wave.q0sq[l])
-		}
+		bl.media[i].set(&bl.wave, nn, kk, normal)
 		bl.onePass(i, films.d[j], b)
 	}
 	for i := 0; i <= n; i++ {
@@ -86,7 +90,9 @@ func (bl *block) solve(films *filmTable, b int, normal bool) {
 		}
 	}
 	bl.balance(0, b)
-	if !normal {
+	if normal {
+		bl.a[1] = bl.a[0] // the same light
+	} else {
 		bl.balance(1, b)
 	}
 }
@@ -113,8 +119,7 @@ func (bl *block) balance(p, b int) {
 	n := len(bl.thick)
 	last := &bl.forward[n]
 	if n == 0 {
-		bl.r[p], bl.t[p] = last.r[p], last.t[p]
-		copy(bl.a[p], last.a[p][:last.count*lanes])
+		bl.r[p], bl.t[p], bl.a[p] = last.r[p], last.t[p], last.a[p]
 		return
 	}
 	var rho, loss, flux [lanes]float64 // reflectance of all that follows, and 1 minus it

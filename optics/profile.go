@@ -128,7 +128,7 @@ func (bl *block) addProfiles(dst []Profile, films *filmTable, p int, weight floa
 // it from their interference.
 func (g *group) addProfiles(dst []Profile, w *waveRow, films *filmTable, p int, flux float64, reversed bool) {
 	gain := flux * g.g[p][0]
-	kx2 := w.n0[0] * w.n0[0] * w.sinSq.hi
+	kx2 := w.n0[0] * w.n0[0] * w.angle.sinSquared().hi
 	for j := range g.count {
 		film := g.first + j*g.step
 		n, k := films.n[film], films.k[film]
@@ -173,9 +173,6 @@ func (g *group) addProfiles(dst []Profile, w *waveRow, films *filmTable, p int, 
 
 // fieldAt returns the fields of lane 0 in front of film j of the group.
 func (g *group) fieldAt(j, p int) (u, v complex128) {
-	f := &g.fields[j]
-	if p == 1 {
-		return complex(f.xr[0], f.xi[0]), complex(f.yr[0], f.yi[0])
-	}
+	f := &g.fields[j][p]
 	return complex(f.ur[0], f.ui[0]), complex(f.vr[0], f.vi[0])
 }

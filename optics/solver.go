@@ -35,6 +35,7 @@ type Solver struct {
 	block      block
 	table      filmTable
 	incoherent []bool
+	media      [4]float64 // wavelength, front, back n and k
 
 	films          []Film    // of averages and graded films
 	slices         []Film    // of graded films
@@ -54,27 +55,27 @@ func (s *Solver) Solve(dst *Response, st Stack, w Wave) error {
 	if normal {
 		ws, wp = 1, 0
 	}
-	bl := &s.block
-	dst.A = grow(dst.A, len(st.Films))
-	dst.R = bl.mean(&bl.r, ws, wp)
-	dst.T = bl.mean(&bl.t, ws, wp)
-	for j := range dst.A {
-		a := ws * bl.a[0][j*lanes]
-		if wp > 0 {
-			a += wp * bl.a[1][j*lanes]
-		}
-		dst.A[j] = a
-	}
+	s.respond(dst, len(st.Films), ws, wp)
 	return nil
 }
 
-// mean weighs the polarisations of lane 0.
-func (bl *block) mean(v *[2][lanes]float64, ws, wp float64) float64 {
-	m := ws * v[0][0]
-	if wp > 0 {
-		m += wp * v[1][0]
+// respond copies lane 0 of the solved block.
+func (s *Solver) respond(r *Response, films int, ws, wp float64) {
+	bl := &s.block
+	r.R, r.T, r.A = ws*bl.r[0][0], ws*bl.t[0][0], grow(r.A, films)
+	as := bl.a[0]
+	for j := range r.A {
+		r.A[j] = ws * as[j*lanes]
 	}
-	return m
+	if wp == 0 {
+		return
+	}
+	r.R = float64(ws*bl.r[0][0]) + float64(wp*bl.r[1][0])
+	r.T = float64(ws*bl.t[0][0]) + float64(wp*bl.t[1][0])
+	ap := bl.a[1]
+	for j := range r.A {
+		r.A[j] = float64(ws*as[j*lanes]) + float64(wp*ap[j*lanes])
+	}
 }
 
 // load checks the stack and the wave and copies them into lane 0. It reports
@@ -83,55 +84,90 @@ func (s *Solver) load(st Stack, w Wave, history bool) (normal bool, err error) {
 	if err := w.Validate(); err != nil {
 		return false, err
 	}
-	if err := st.Validate(); err != nil {
-		return false, err
-	}
 	n := len(st.Films)
-	s.table.n, s.table.k = grow(s.table.n, n), grow(s.table.k, n)
-	s.table.d = grow(s.table.d, n)
+	s.table.n, s.table.k, s.table.d = grow(s.table.n, n), grow(s.table.k, n), grow(s.table.d, n)
 	s.table.stride, s.table.offset = 1, 0
 	if cap(s.incoherent) < n {
 		s.incoherent = make([]bool, n)
 	}
 	s.incoherent = s.incoherent[:n]
-	for j, f := range st.Films {
-		if err := checkPhase(f.Index, f.Thickness, w.Wavelength, f.Incoherent); err != nil {
-			return false, fmt.Errorf("optics: film %d: %w", j, err)
+	usual := usualIndex(real(st.Front), 0) && imag(st.Front) == 0 && usualIndex(real(st.Back), imag(st.Back))
+	for j := range st.Films {
+		f := &st.Films[j]
+		re, im := real(f.Index), imag(f.Index)
+		s.table.n[j], s.table.k[j], s.table.d[j], s.incoherent[j] = re, im, f.Thickness, f.Incoherent
+		usual = usual && usualIndex(re, im) && f.Thickness >= 0 && usualPhase(re+im, f.Thickness, w.Wavelength) && !f.Incoherent
+	}
+	if !usual {
+		if err := st.validateAt(w.Wavelength); err != nil {
+			return false, err
 		}
-		s.table.n[j], s.table.k[j], s.table.d[j] = real(f.Index), imag(f.Index), f.Thickness
-		s.incoherent[j] = f.Incoherent
 	}
 	bl := &s.block
 	bl.history = history
 	bl.prepare(s.incoherent, n)
-	normal = w.Angle == 0
-	bl.setAngle(w.Angle)
-	bl.setWave(0, w.Wavelength, real(st.Front), math.Cos(w.Angle))
-	bl.setBack(0, real(st.Back), imag(st.Back))
-	return normal, nil
+	s.media = [4]float64{w.Wavelength, real(st.Front), real(st.Back), imag(st.Back)}
+	bl.load(w.Angle, s.media[:1], s.media[1:2], s.media[2:3], s.media[3:])
+	return w.Angle == 0, nil
 }
 
-// setAngle stores what all lanes share.
-func (bl *block) setAngle(angle float64) { bl.wave.sinSq = sinSquared(angle) }
+// validateAt reports the first value of the stack that is out of its range at
+// the wavelength.
+func (s Stack) validateAt(wavelength float64) error {
+	if err := s.Validate(); err != nil {
+		return err
+	}
+	for j, f := range s.Films {
+		if err := checkPhase(f.Index, f.Thickness, wavelength, f.Incoherent); err != nil {
+			return fmt.Errorf("optics: film %d: %w", j, err)
+		}
+	}
+	return nil
+}
 
-// setWave fills lane i of the wave and of the front medium.
-func (bl *block) setWave(i int, wavelength, n0, cos float64) {
-	q0 := n0 * cos
-	w := &bl.wave
-	w.wavelength[i], w.k0[i], w.n0[i], w.q0sq[i] = wavelength, 2*math.Pi/wavelength, n0, q0*q0
-	bl.front.qr[i], bl.front.qi[i], bl.front.er[i], bl.front.ei[i] = q0, 0, n0*n0, 0
+// usualIndex reports whether an index is well inside its limits, so that
+// checkIndex need not be asked: the modulus lies between (n+k)/√2 and n+k.
+func usualIndex(n, k float64) bool {
+	return n >= 0 && k >= 0 && n+k >= 2*MinIndex && n+k <= MaxIndex
+}
+
+// usualPhase reports the same of the phase of a film whose n+k is sum.
+func usualPhase(sum, d, wavelength float64) bool {
+	return 2*math.Pi*sum*d <= MaxPhase*wavelength
+}
+
+// load sets the waves and the media in front and behind of one block.
+func (bl *block) load(theta float64, wavelength, front, backN, backK []float64) {
+	w, f := &bl.wave, &bl.front
+	w.angle.set(theta)
+	f.lossless = true
+	b := len(wavelength)
+	if b > lanes {
+		b = lanes
+	}
+	wavelength, front = wavelength[:b], front[:b]
+	for i := range wavelength {
+		n0 := front[i]
+		q0 := n0 * w.angle.cos
+		w.wavelength[i], w.k0[i], w.n0[i], w.q0sq[i] = wavelength[i], 2*math.Pi/wavelength[i], n0, q0*q0
+		f.qr[i], f.er[i], f.one[i] = q0, n0*n0, 1
+	}
+	if bl.back.set(w, backN[:b], backK[:b], theta == 0) {
+		for i := range b {
+			bl.correctBack(i, backN[i], backK[i])
+		}
+	}
 }
 
 // nearCritical is the share of n0² below which q² of the back medium has lost
 // digits that the transmittance would show.
 const nearCritical = 1.0 / 16
 
-func (bl *block) setBack(i int, n, k float64) {
-	n0 := bl.wave.n0[i]
-	bl.back.set(i, n, k, n0, bl.wave.q0sq[i])
-	qr, qi := bl.back.qr[i], bl.back.qi[i]
-	if qr*qr+qi*qi < nearCritical*n0*n0 {
-		kr, ki := squareNormal(n, k, n0, bl.wave.sinSq).hi, 2*n*k
-		bl.back.qr[i], bl.back.qi[i] = rootUpper(kr, ki)
+// correctBack finds q of lane i of the back medium again if it is near its
+// critical angle.
+func (bl *block) correctBack(i int, n, k float64) {
+	m, n0 := &bl.back, bl.wave.n0[i]
+	if dot(m.qr[i], m.qi[i], m.qr[i], m.qi[i]) < nearCritical*n0*n0 {
+		m.qr[i], m.qi[i] = rootUpper(squareNormal(n, k, n0, bl.wave.angle.sinSquared()).hi, 2*n*k)
 	}
 }

@@ -102,8 +102,7 @@ func (sw *Sweeper) Run(dst *SweepResponse, s *Sweep) error {
 	}
 	w, films, angles := len(s.Wavelength), len(s.Thickness), len(s.Angle)
 	dst.R, dst.T, dst.A = grow(dst.R, angles*w), grow(dst.T, angles*w), grow(dst.A, angles*films*w)
-	perAngle := (w + lanes - 1) / lanes
-	jobs := angles * perAngle
+	jobs := angles * ((w + lanes - 1) / lanes)
 	workers := s.Workers
 	if workers <= 0 {
 		workers = runtime.GOMAXPROCS(0)
@@ -114,14 +113,19 @@ func (sw *Sweeper) Run(dst *SweepResponse, s *Sweep) error {
 	}
 	if workers == 1 {
 		runJobs(dst, s, &sw.blocks[0], 0, jobs)
-		return nil
+	} else {
+		sw.share(dst, s, jobs, workers)
 	}
+	return nil
+}
+
+// share gives every goroutine its part of the blocks.
+func (sw *Sweeper) share(dst *SweepResponse, s *Sweep, jobs, workers int) {
 	var wg sync.WaitGroup
 	for i := range workers {
 		wg.Go(func() { runJobs(dst, s, &sw.blocks[i], i*jobs/workers, (i+1)*jobs/workers) })
 	}
 	wg.Wait()
-	return nil
 }
 
 // runJobs computes blocks from..to-1, numbered along the wavelengths of each
@@ -135,12 +139,7 @@ func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
 	for job := from; job < to; job++ {
 		a, w0 := job/perAngle, job%perAngle*lanes
 		b := min(lanes, w-w0)
-		cos := math.Cos(s.Angle[a])
-		bl.setAngle(s.Angle[a])
-		for i := range b {
-			bl.setWave(i, s.Wavelength[w0+i], s.Front[w0+i], cos)
-			bl.setBack(i, s.BackN[w0+i], s.BackK[w0+i])
-		}
+		bl.load(s.Angle[a], s.Wavelength[w0:][:b], s.Front[w0:], s.BackN[w0:], s.BackK[w0:])
 		table.offset = w0
 		normal := s.Angle[a] == 0
 		bl.solve(&table, b, normal)
@@ -165,7 +164,7 @@ func weigh(dst, s, p []float64, ws, wp float64) {
 		return
 	}
 	for i := range dst {
-		dst[i] = ws*s[i] + wp*p[i]
+		dst[i] = float64(ws*s[i]) + float64(wp*p[i])
 	}
 }
 
@@ -199,6 +198,9 @@ func (s *Sweep) Validate() error {
 		}
 	}
 	for i, n := range s.Front {
+		if usualIndex(n, 0) {
+			continue
+		}
 		if err := checkIndex(complex(n, 0)); err != nil {
 			return fmt.Errorf("optics: sweep: front medium, wavelength %g nm: %w", s.Wavelength[i], err)
 		}
@@ -241,15 +243,19 @@ func (s *Sweep) checkFilm(j int, shortest float64) error {
 // the largest n + k.
 func checkRow(n, k []float64) (bad int, largest float64) {
 	k = k[:len(n)]
+	usual := true
 	for i, re := range n {
-		im := k[i]
-		sum := re + im
-		// The modulus lies between sum/√2 and sum; near the limits ask exactly.
-		if !(re >= 0 && im >= 0 && sum >= 2*MinIndex && sum <= MaxIndex) && checkIndex(complex(re, im)) != nil {
-			return i, largest
-		}
+		sum := re + k[i]
+		usual = usual && usualIndex(re, k[i])
 		if sum > largest {
 			largest = sum
+		}
+	}
+	if !usual {
+		for i, re := range n {
+			if checkIndex(complex(re, k[i])) != nil {
+				return i, largest
+			}
 		}
 	}
 	return -1, largest

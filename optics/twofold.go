@@ -59,6 +59,27 @@ func sinSquared(theta float64) twofold {
 	return h
 }
 
+// angle is an angle of incidence. Its sin² to 32 digits is found when it is
+// first asked for.
+type angle struct {
+	theta, cos float64 // rad; cos = 0 marks an angle that was never set
+	known      bool    // sinSq is
+	sinSq      twofold
+}
+
+func (a *angle) set(theta float64) {
+	if theta != a.theta || a.cos == 0 {
+		*a = angle{theta: theta, cos: math.Cos(theta)}
+	}
+}
+
+func (a *angle) sinSquared() twofold {
+	if !a.known {
+		a.sinSq, a.known = sinSquared(a.theta), true
+	}
+	return a.sinSq
+}
+
 // squareNormal returns the real part of q² = N² - n0² sin²θ.
 func squareNormal(n, k, n0 float64, sinSq twofold) twofold {
 	f := twoProduct(n0, n0).mul(sinSq)
