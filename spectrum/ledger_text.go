@@ -36,16 +36,16 @@ func (a Account) WriteText(w io.Writer) error {
 	}
 	t.line(head)
 	for _, r := range a.Rows {
-		cells := []string{r.Name, share(r), current(r)}
+		cells := []string{r.Name, shareText(r), currentText(r)}
 		for _, k := range kinds {
 			cells = append(cells, fmt.Sprintf("%.2g", k.of(r)))
 		}
 		t.line(cells)
 	}
 	for _, cells := range [][]string{
-		{"total", share(a.Total), current(a.Total)},
-		{"incident", share(Row{Share: 1}), current(Row{Current: a.Incident})},
-		{"closure error", size(a.Closure), size(a.Total.Current - a.Incident)},
+		{"total", shareText(a.Total), currentText(a.Total)},
+		{"incident", shareText(Row{Share: 1}), currentText(Row{Current: a.Incident})},
+		{"closure error", sizeText(a.Closure), sizeText(a.Total.Current - a.Incident)},
 	} {
 		t.line(append(cells, make([]string, len(kinds))...))
 	}
@@ -93,22 +93,22 @@ func WriteAccounts(w io.Writer, titles []string, accounts []Account) error {
 			if !ok {
 				return [3]string{}
 			}
-			return [3]string{share(r), current(r), fmt.Sprintf("%.3f", r.Combined)}
+			return [3]string{shareText(r), currentText(r), fmt.Sprintf("%.3f", r.Combined)}
 		})
 	}
-	line("total", func(i int) [3]string { return [3]string{share(accounts[i].Total), current(accounts[i].Total)} })
+	line("total", func(i int) [3]string { return [3]string{shareText(accounts[i].Total), currentText(accounts[i].Total)} })
 	line("incident", func(i int) [3]string {
-		return [3]string{share(Row{Share: 1}), current(Row{Current: accounts[i].Incident})}
+		return [3]string{shareText(Row{Share: 1}), currentText(Row{Current: accounts[i].Incident})}
 	})
 	line("closure error", func(i int) [3]string {
-		return [3]string{size(accounts[i].Closure), size(accounts[i].Total.Current - accounts[i].Incident)}
+		return [3]string{sizeText(accounts[i].Closure), sizeText(accounts[i].Total.Current - accounts[i].Incident)}
 	})
 	return t.flush()
 }
 
-func share(r Row) string    { return fmt.Sprintf("%.4f", r.Share) }
-func current(r Row) string  { return fmt.Sprintf("%.3f", r.Current) }
-func size(v float64) string { return fmt.Sprintf("%.1e", math.Abs(v)) }
+func shareText(r Row) string    { return fmt.Sprintf("%.4f", r.Share) }
+func currentText(r Row) string  { return fmt.Sprintf("%.3f", r.Current) }
+func sizeText(v float64) string { return fmt.Sprintf("%.1e", math.Abs(v)) }
 
 // text is a table with right-aligned columns.
 type text struct {

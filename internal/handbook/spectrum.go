@@ -3,6 +3,7 @@ package handbook
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"gonum.org/v1/gonum/unit/constant"
 
@@ -20,7 +21,12 @@ func spectrumQuantity(row check.Row) (float64, error) {
 	s := standard[row.Inputs["spectrum"]]()
 	window := []float64{row.Num("from"), row.Num("to")}
 	all := []float64{1, 1}
+	if strings.HasPrefix(row.Quantity, "limit_") {
+		return limitQuantity(row)
+	}
 	switch row.Quantity {
+	case "white":
+		return whiteQuantity(row)
 	case "irradiance":
 		return s.Total()
 	case "gap_current":
@@ -65,4 +71,52 @@ func spectrumQuantity(row check.Row) (float64, error) {
 		return s.Total()
 	}
 	return 0, fmt.Errorf("quantity %q is not known here", row.Quantity)
+}
+
+// limitQuantity computes a figure of the detailed-balance limit.
+func limitQuantity(row check.Row) (float64, error) {
+	const temperature = 298.15 // K
+	s := spectrum.AM15G()
+	j, err := spectrum.MaxPhotocurrent(s, row.Num("gap"))
+	if err != nil {
+		return 0, err
+	}
+	j0, err := spectrum.RadiativeCurrentOfGap(row.Num("gap"), temperature)
+	if err != nil {
+		return 0, err
+	}
+	d, err := spectrum.IdealDiode(j, j0*row.Num("faces"), temperature)
+	if err != nil {
+		return 0, err
+	}
+	switch row.Quantity {
+	case "limit_current":
+		return j, nil
+	case "limit_voltage":
+		return d.Voc, nil
+	case "limit_fill_factor":
+		return d.FillFactor, nil
+	case "limit_efficiency": // percent of the irradiance
+		const percent, milliwattPerCM2 = 100, 10 // 1 mW/cm² is 10 W/m²
+		total, err := s.Total()
+		if _, ok := row.Inputs["irradiance"]; ok { // as the source rounded it
+			total = row.Num("irradiance")
+		}
+		return percent * milliwattPerCM2 * d.Power / total, err
+	}
+	return 0, fmt.Errorf("quantity %q is not known here", row.Quantity)
+}
+
+// whiteQuantity computes the colour of a perfect white.
+func whiteQuantity(row check.Row) (float64, error) {
+	c, err := spectrum.Colour([]float64{380, 780}, []float64{1, 1})
+	if err != nil {
+		return 0, err
+	}
+	x, y := c.Chromaticity()
+	v, ok := map[string]float64{"x": x, "y": y, "X": c.X, "Y": c.Y, "Z": c.Z}[row.Inputs["component"]]
+	if !ok {
+		return 0, fmt.Errorf("component %q", row.Inputs["component"])
+	}
+	return v, nil
 }
