@@ -1,2 +1,2 @@
-// Package absorb is part of photonledger.
+// Package absorb turns light inside an absorber into carriers.
 package absorb
