@@ -144,7 +144,7 @@ func RadiativeCurrentOfGap(gap, temperature float64) (float64, error) {
 
 // bosonTail is the integral of u²/(exp(u)-1) from x >= 0 on.
 func bosonTail(x float64) float64 {
-	if x < 1 {
+	if x < 0.5 { // where the first missing term is below 1e-19
 		// From 2ζ(3) at x = 0 less the integral of the power series with the
 		// Bernoulli numbers: u - u²/2 + u³/12 - u⁵/720 + u⁷/30240 - ...
 		const twiceZeta3 = 2.404113806319188570799476323022899981530

@@ -205,14 +205,16 @@ func (p *Sampler) addWeights(dst []float64, q *panel, l *line) {
 	var moment [degree + 1]float64
 	for a := q.lo; a < q.hi; {
 		b := min(q.hi, l.end())
-		mid, half := 0.5*a+0.5*b, 0.5*(b-a)
+		// Straight on the piece, so known from its ends (see cells.next).
+		ea, eb := l.at(a)*0.5*(b-a), l.at(b)*0.5*(b-a)
+		xa, xb := ((a-q.lo)-(q.hi-a))/(q.hi-q.lo), ((b-q.lo)-(q.hi-b))/(q.hi-q.lo)
 		for i, g := range c.gauss {
-			w := mid + half*g
-			f := l.at(w) * half * c.gaussW[i]
+			u := 0.5 + 0.5*g
+			f := c.gaussW[i] * ((1-u)*ea + u*eb)
 			if p.Weighting == Photons {
-				f *= w * currentPerIrradiance
+				f *= ((1-u)*a + u*b) * currentPerIrradiance
 			}
-			x := ((w - q.lo) - (q.hi - w)) / (q.hi - q.lo)
+			x := (1-u)*xa + u*xb
 			t0, t1 := 1.0, x
 			for k := range moment {
 				moment[k] += f * t0

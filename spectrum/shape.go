@@ -2,7 +2,6 @@ package spectrum
 
 import (
 	"fmt"
-	"math"
 	"slices"
 )
 
@@ -74,7 +73,7 @@ func (s Spectrum) Slice(from, to float64) (Spectrum, error) {
 //
 // Wavelengths outside the spectrum are an error that wraps [ErrRange].
 func (s Spectrum) Resample(wavelength []float64) (Spectrum, error) {
-	mean, err := CellIntegrals(nil, s, wavelength, Power)
+	whole, err := CellIntegrals(nil, s, wavelength, Power)
 	if err != nil {
 		return Spectrum{}, err
 	}
@@ -83,17 +82,19 @@ func (s Spectrum) Resample(wavelength []float64) (Spectrum, error) {
 	for i, l := range wavelength {
 		end[i] = interpolate(s.Wavelength, s.Irradiance, l)
 	}
-	for i := range mean {
-		mean[i] /= wavelength[i+1] - wavelength[i]
-		end[i], end[i+1] = min(end[i], 2*mean[i]), min(end[i+1], 2*mean[i])
+	for i, v := range whole {
+		most := 2 * v / (wavelength[i+1] - wavelength[i])
+		end[i], end[i+1] = min(end[i], most), min(end[i+1], most)
 	}
 	out := Spectrum{Name: s.Name, Source: s.Source, Wavelength: make([]float64, 0, 2*n-1), Irradiance: make([]float64, 0, 2*n-1)}
 	for i, l := range wavelength {
 		out.Wavelength, out.Irradiance = append(out.Wavelength, l), append(out.Irradiance, end[i])
 		if i < n-1 {
-			middle := l + 0.5*(wavelength[i+1]-l)
-			out.Wavelength = append(out.Wavelength, middle)
-			out.Irradiance = append(out.Irradiance, math.Max(0, 2*mean[i]-0.5*(end[i]+end[i+1])))
+			r := wavelength[i+1]
+			middle := l + 0.5*(r-l)
+			// From the two trapezoids, with the middle as it was rounded.
+			v := (2*whole[i] - end[i]*(middle-l) - end[i+1]*(r-middle)) / (r - l)
+			out.Wavelength, out.Irradiance = append(out.Wavelength, middle), append(out.Irradiance, max(0, v))
 		}
 	}
 	return out, out.Validate() // neighbours so close that there is no middle are refused here

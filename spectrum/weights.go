@@ -149,26 +149,30 @@ func newCells(s Spectrum, factor Curve, wavelength []float64, weighting Weightin
 	return c, nil
 }
 
-// Three-point Gauss quadrature on -1..1: nodes ±gaussNode and 0.
-const (
-	gaussNode   = 0.774596669241483377035853079956 // sqrt(3/5)
-	gaussOuter  = 5.0 / 9
-	gaussMiddle = 8.0 / 9
-)
+// Three-point Gauss quadrature on 0..1: share of the way and weight.
+const gaussOffset = 0.112701665379258311482073460022 // (1 - sqrt(3/5))/2
+
+var gauss3 = [3][2]float64{{gaussOffset, 5.0 / 18}, {0.5, 8.0 / 18}, {1 - gaussOffset, 5.0 / 18}}
 
 // next integrates over lo..hi, the cell that follows the one before, against
 // the two hat functions that fall from 1 at lo to 0 at hi and rise from 0 to 1.
+//
+// All factors are straight on a piece, so they are evaluated at its ends only:
+// a wavelength between them, rounded, would cost digits on narrow pieces.
 func (c *cells) next(lo, hi float64) (left, right float64) {
 	for a := lo; a < hi; {
 		b := min(hi, c.spectrum.end(), c.factor.end())
-		mid, half := 0.5*a+0.5*b, 0.5*(b-a)
-		for _, g := range [3][2]float64{{-gaussNode, gaussOuter}, {0, gaussMiddle}, {gaussNode, gaussOuter}} {
-			l := mid + half*g[0]
-			f := c.spectrum.at(l) * c.factor.at(l) * g[1] * half
-			if c.photons {
-				f *= l * currentPerIrradiance
-			}
-			t := (l - lo) / (hi - lo)
+		ea, eb := c.spectrum.at(a)*(b-a), c.spectrum.at(b)*(b-a)
+		fa, fb := c.factor.at(a), c.factor.at(b)
+		ta, tb := (a-lo)/(hi-lo), (b-lo)/(hi-lo)
+		pa, pb := 1.0, 1.0
+		if c.photons {
+			pa, pb = a*currentPerIrradiance, b*currentPerIrradiance
+		}
+		for _, g := range gauss3 {
+			u := g[0]
+			f := g[1] * ((1-u)*ea + u*eb) * ((1-u)*pa + u*pb) * ((1-u)*fa + u*fb)
+			t := (1-u)*ta + u*tb
 			left += f * (1 - t)
 			right += f * t
 		}
