@@ -34,10 +34,13 @@ func checkMesh(name string, mesh []float64) error {
 	return nil
 }
 
+// inside reports whether a depth lies in 0..end, but for rounding.
+func inside(z, end float64) bool { return z >= 0 && z <= end*(1+roundingOfDepth) }
+
 // checkInside accepts a last boundary inside a film or table that ends at the
 // given depth, but for rounding.
 func checkInside(name string, last, end float64) error {
-	if last > end*(1+roundingOfDepth) {
+	if !inside(last, end) {
 		return fmt.Errorf("mesh ends at %g nm, %s at %g nm: %w", last, name, end, ErrRange)
 	}
 	return nil

@@ -20,6 +20,7 @@ import (
 type Generator struct {
 	width          []float64 // nm, of each cell
 	mean, transmit []float64 // of each cell: mean of exp(-alpha t) over it, exp(-alpha h)
+	counts         []float64 // cm^-2 s^-1, photons absorbed in each cell of a histogram
 }
 
 // anchor is the number of cells after which a product of transmittances is

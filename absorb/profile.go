@@ -64,9 +64,9 @@ func (p *Profile) check() error {
 // At returns the absorption density (1/nm) at the depth z (nm) from the lit
 // face of the film.
 //
-// Special case: NaN outside the film.
+// Special case: NaN outside the film, but for rounding.
 func (p Profile) At(z float64) float64 {
-	if !(z >= 0 && z <= p.Thickness) {
+	if !inside(z, p.Thickness) {
 		return math.NaN()
 	}
 	beams := p.Forward*math.Exp(-p.Decay*z) + p.Backward*math.Exp(-p.Decay*(p.Thickness-z))
@@ -83,7 +83,7 @@ func (p Profile) At(z float64) float64 {
 //
 // Special case: NaN unless 0 <= z1 <= z2 <= Thickness.
 func (p Profile) Between(z1, z2 float64) float64 {
-	if !(z1 >= 0 && z1 <= z2 && z2 <= p.Thickness) {
+	if !(z1 >= 0 && z1 <= z2 && inside(z2, p.Thickness)) {
 		return math.NaN()
 	}
 	return p.integral(z1, z2)
