@@ -93,12 +93,12 @@ func newEmission(temperature float64) *emission {
 
 // integrate returns the current density of from..to in mA/cm². It halves the
 // range (in ln λ) until the integrand is smooth for ten nodes: hc/(λkT) changes by
-// less than 1 and λ by less than an eighth.
+// less than 1 and λ by less than half.
 func (e *emission) integrate(from, to float64) float64 {
 	if !(from < to) {
 		return 0
 	}
-	if e.x/from-e.x/to > 1 || to > 1.125*from {
+	if e.x/from-e.x/to > 1 || to > 1.5*from {
 		middle := math.Sqrt(from) * math.Sqrt(to)
 		if from < middle && middle < to {
 			return e.integrate(from, middle) + e.integrate(middle, to)
