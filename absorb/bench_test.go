@@ -43,6 +43,9 @@ func BenchmarkGeneration(b *testing.B) {
 			b.Run(fmt.Sprintf("%s/cells=%d/wavelengths=%d", kind, size[0], size[1]), func(b *testing.B) {
 				var g Generator
 				dst := make([]float64, size[0])
+				if _, err := g.Alpha(dst, mesh, photons, alpha); err != nil {
+					b.Fatal(err)
+				}
 				b.ReportAllocs()
 				for b.Loop() {
 					var err error

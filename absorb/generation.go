@@ -19,6 +19,7 @@ import (
 // in mA/cm² times [PhotonsPerCurrent].
 type Generator struct {
 	width          []float64 // nm, of each cell
+	widest         float64   // nm, the largest of them
 	mean, transmit []float64 // of each cell: mean of exp(-alpha t) over it, exp(-alpha h)
 	counts         []float64 // cm^-2 s^-1, photons absorbed in each cell of a histogram
 }
@@ -117,8 +118,10 @@ func (g *Generator) start(dst, mesh, photons []float64, wavelengths int) ([]floa
 		g.transmit = make([]float64, cells)
 	}
 	g.width, g.mean, g.transmit = g.width[:cells], g.mean[:cells], g.transmit[:cells]
+	g.widest = 0
 	for i := range g.width {
 		g.width[i] = mesh[i+1] - mesh[i]
+		g.widest = max(g.widest, g.width[i])
 	}
 	return dst, nil
 }
@@ -133,14 +136,33 @@ func finish(dst []float64) ([]float64, error) {
 	return dst, nil
 }
 
-// attenuate returns the mean of exp(-q t) over t = 0..1 and exp(-q).
-func attenuate(q float64) (mean, transmit float64) {
-	if q <= smallExp {
-		mean = meanExpSmall(q)
-		return mean, 1 - q*mean
+// attenuate stores, for each cell lo..hi-1, the mean of exp(-decay t) over its
+// width and its value at the end.
+func (g *Generator) attenuate(decay float64, lo, hi int) {
+	width := g.width[lo:hi]
+	mean, transmit := g.mean[lo:hi][:len(width)], g.transmit[lo:hi][:len(width)]
+	if decay*g.widest <= tinyExp {
+		for i, h := range width {
+			q := decay * h
+			m := meanExpTiny(q)
+			mean[i], transmit[i] = m, 1-q*m
+		}
+		return
 	}
-	transmit = math.Exp(-q)
-	return (1 - transmit) / q, transmit
+	for i, h := range width {
+		q := decay * h
+		if q > 4*smallExp {
+			t := math.Exp(-q)
+			mean[i], transmit[i] = (1-t)/q, t
+			continue
+		}
+		// A quarter of the cell, four times.
+		q *= 0.25
+		m := meanExpSmall(q)
+		t := 1 - q*m
+		t2 := t * t
+		mean[i], transmit[i] = 0.25*m*(1+t)*(1+t2), t2*t2
+	}
 }
 
 // addBeam adds a beam that falls off with depth and has the given rate at depth 0.
@@ -151,29 +173,30 @@ func (g *Generator) addBeam(dst, mesh []float64, decay, rate float64) {
 			return
 		}
 		hi := min(lo+anchor, len(dst))
-		width, cells := g.width[lo:hi], dst[lo:hi]
-		for i, h := range width {
-			mean, transmit := attenuate(decay * h)
-			cells[i] += here * mean
-			here *= transmit
-		}
+		g.attenuate(decay, lo, hi)
+		g.addDown(dst, here, lo, hi)
+	}
+}
+
+// addDown adds a beam with the given rate at the upper face of cell lo.
+func (g *Generator) addDown(dst []float64, rate float64, lo, hi int) {
+	cells := dst[lo:hi]
+	mean, transmit := g.mean[lo:hi][:len(cells)], g.transmit[lo:hi][:len(cells)]
+	for i := range cells {
+		cells[i] += rate * mean[i]
+		rate *= transmit[i]
 	}
 }
 
 // addBeams adds the beams down and up of p.
 func (g *Generator) addBeams(dst, mesh []float64, p *Profile, rate float64) {
-	for i, h := range g.width {
-		g.mean[i], g.transmit[i] = attenuate(p.Decay * h)
-	}
+	g.attenuate(p.Decay, 0, len(dst))
 	for lo := 0; lo < len(dst); lo += anchor {
 		here := p.Forward * rate * math.Exp(-p.Decay*mesh[lo])
 		if here == 0 {
 			break
 		}
-		for i := lo; i < min(lo+anchor, len(dst)); i++ {
-			dst[i] += here * g.mean[i]
-			here *= g.transmit[i]
-		}
+		g.addDown(dst, here, lo, min(lo+anchor, len(dst)))
 	}
 	for hi := len(dst); hi > 0; hi -= anchor {
 		here := p.Backward * rate * math.Exp(-p.Decay*(p.Thickness-mesh[hi]))
