@@ -17,12 +17,11 @@ func drawFigure(path string, results []result) error {
 	p := plot.New()
 	p.Title.Text = "published values: deviation in units of the allowed one"
 	p.Y.Label.Text = "deviation / allowed deviation"
-	p.Y.Scale = plot.LogScale{}
 	p.Y.Tick.Marker = plot.ConstantTicks{
-		{Value: floor, Label: "none"}, {Value: 1e-5, Label: "1e-5"}, {Value: 1e-4, Label: "1e-4"}, {Value: 1e-3, Label: "0.001"},
-		{Value: 0.01, Label: "0.01"}, {Value: 0.1, Label: "0.1"}, {Value: 1, Label: "1"},
+		{Value: floor, Label: "none"}, {Value: -5, Label: "1e-5"}, {Value: -4, Label: "1e-4"}, {Value: -3, Label: "0.001"},
+		{Value: -2, Label: "0.01"}, {Value: -1, Label: "0.1"}, {Value: 0, Label: "1"},
 	}
-	p.Y.Min, p.Y.Max = floor, 2
+	p.Y.Min, p.Y.Max = floor, ceiling
 	var names []string
 	var dots plotter.XYs
 	for i, r := range results {
@@ -32,14 +31,14 @@ func drawFigure(path string, results []result) error {
 		}
 		// A fixed spread within the column, so that dots do not hide each other.
 		x := float64(len(names)-1) + 0.6*(math.Mod(float64(i)*0.618034, 1)-0.5)
-		dots = append(dots, plotter.XY{X: x, Y: min(2, math.Max(floor, r.share()))})
+		dots = append(dots, plotter.XY{X: x, Y: min(ceiling, max(floor, math.Log10(r.share())))})
 	}
 	scatter, err := plotter.NewScatter(dots)
 	if err != nil {
 		return err
 	}
 	scatter.GlyphStyle = draw.GlyphStyle{Color: color.RGBA{R: 18, G: 52, B: 92, A: 255}, Radius: vg.Points(2), Shape: draw.CircleGlyph{}}
-	limit, err := plotter.NewLine(plotter.XYs{{X: -0.5, Y: 1}, {X: float64(len(names)) - 0.5, Y: 1}})
+	limit, err := plotter.NewLine(plotter.XYs{{X: -0.5, Y: 0}, {X: float64(len(names)) - 0.5, Y: 0}})
 	if err != nil {
 		return err
 	}
@@ -51,5 +50,5 @@ func drawFigure(path string, results []result) error {
 	return p.Save(22*vg.Centimeter, 13*vg.Centimeter, path)
 }
 
-// floor is where deviations too small to be shown are drawn.
-const floor = 1e-6
+// Range of the decimal logarithm; smaller deviations are drawn at the floor.
+const floor, ceiling = -6, 0.3

@@ -13,15 +13,17 @@ import (
 	"os"
 	"path/filepath"
 
+	"photonledger/examples/internal/pilot"
 	"photonledger/spectrum"
 )
 
 // options are what a user would change first.
 type options struct {
 	out     string
-	variant string  // planar, lambertian or both
+	variant string  // textured, planar, lambertian or all
 	wafer   float64 // µm
 	film    float64 // nm
+	rays    int
 }
 
 func main() {
@@ -29,9 +31,10 @@ func main() {
 	flags := flag.NewFlagSet("ledger", flag.ContinueOnError)
 	flags.SetOutput(io.Discard)
 	flags.StringVar(&o.out, "out", "out", "folder for ledger.csv and ledger.png")
-	flags.StringVar(&o.variant, "variant", "both", "planar, lambertian or both")
+	flags.StringVar(&o.variant, "variant", "all", "textured, planar, lambertian or all")
 	flags.Float64Var(&o.wafer, "wafer", 160, "wafer thickness, µm")
 	flags.Float64Var(&o.film, "film", 75, "thickness of the silicon nitride film, nm")
+	flags.IntVar(&o.rays, "rays", 2048, "rays for each wavelength of the textured variant")
 	err := flags.Parse(os.Args[1:])
 	if err == flag.ErrHelp {
 		flags.SetOutput(os.Stdout)
@@ -61,25 +64,28 @@ func (o options) check() error {
 	if !(o.film >= 0 && o.film <= 500) {
 		return fmt.Errorf("-film %g: want 0 to 500 nm", o.film)
 	}
-	if _, ok := variants[o.variant]; !ok && o.variant != "both" {
-		return fmt.Errorf("-variant %q: want planar, lambertian or both", o.variant)
+	if _, ok := variants[o.variant]; !ok && o.variant != "all" {
+		return fmt.Errorf("-variant %q: want textured, planar, lambertian or all", o.variant)
+	}
+	if o.rays < 64 || o.rays > 1<<22 {
+		return fmt.Errorf("-rays %d: want 64 to %d", o.rays, 1<<22)
 	}
 	return nil
 }
 
 // run computes the ledgers and writes table, CSV and figure.
 func run(o options, stdout io.Writer) error {
-	cell, err := newCell(o.wafer*nmPerMicron, o.film)
+	cell, err := newCell(o.wafer*pilot.NMPerMicron, o.film, o.rays)
 	if err != nil {
 		return err
 	}
-	names := []string{o.variant}
-	if o.variant == "both" {
-		names = []string{"planar", "lambertian"}
+	titles := []string{o.variant}
+	if o.variant == "all" {
+		titles = []string{"textured", "planar", "lambertian"}
 	}
 	var ledgers []spectrum.Ledger
 	var accounts []spectrum.Account
-	for _, name := range names {
+	for _, name := range titles {
 		ledger, err := variants[name](cell)
 		if err != nil {
 			return err
@@ -91,17 +97,17 @@ func run(o options, stdout io.Writer) error {
 		ledgers, accounts = append(ledgers, ledger), append(accounts, account)
 	}
 	fmt.Fprintf(stdout, "Invented pilot line, wafer cell of %g µm with %g nm silicon nitride, AM1.5 global, %g nm to %g nm\n\n",
-		o.wafer, o.film, cell.wavelength[0], cell.wavelength[len(cell.wavelength)-1])
-	if err := spectrum.WriteAccounts(stdout, names, accounts); err != nil {
+		o.wafer, o.film, cell.Wavelength[0], cell.Wavelength[len(cell.Wavelength)-1])
+	if err := spectrum.WriteAccounts(stdout, titles, accounts); err != nil {
 		return err
 	}
 	if err := os.MkdirAll(o.out, 0o755); err != nil {
 		return err
 	}
-	if err := writeCSV(filepath.Join(o.out, "ledger.csv"), names, ledgers); err != nil {
+	if err := writeCSV(filepath.Join(o.out, "ledger.csv"), titles, ledgers); err != nil {
 		return err
 	}
-	if err := drawFigure(filepath.Join(o.out, "ledger.png"), names, ledgers); err != nil {
+	if err := drawFigure(filepath.Join(o.out, "ledger.png"), titles, ledgers); err != nil {
 		return err
 	}
 	fmt.Fprintf(stdout, "\nwrote %s and %s\n", filepath.Join(o.out, "ledger.csv"), filepath.Join(o.out, "ledger.png"))
