@@ -195,3 +195,41 @@ func TestWriters(t *testing.T) {
 		}
 	}
 }
+
+// TestTexts: a table shows the kinds of uncertainty that occur and no others, and
+// leaves blank what an account does not have.
+func TestTexts(t *testing.T) {
+	l := threeShares()
+	l.Entries[0].StdError = make([]float64, len(l.Wavelength))
+	l.Entries[0].StdError[10] = 0.5
+	l.Entries[0].Name = "re\tflec\nted"
+	acc := must(l.Integrate())
+	var b bytes.Buffer
+	if err := acc.WriteText(&b); err != nil {
+		t.Fatal(err)
+	}
+	lines := strings.Split(b.String(), "\n")
+	if head := strings.Join(strings.Fields(lines[0]), " "); head != "destination share mA/cm² standard error combined" {
+		t.Errorf("header %q", head)
+	}
+	// Three entries, total, incident, closure error, and the end of the last line.
+	if len(lines) != 8 || strings.Join(strings.Fields(lines[1])[:3], " ") != "re flec ted" {
+		t.Errorf("%d lines: %q", len(lines), lines)
+	}
+	for i, name := range []string{"total", "incident"} {
+		f := strings.Fields(lines[4+i])
+		if f[0] != name || f[1] != "1.0000" || f[2] != strconv.FormatFloat(acc.Incident, 'f', 3, 64) {
+			t.Errorf("line %q, want %s of %.3f", lines[4+i], name, acc.Incident)
+		}
+	}
+	other := Account{Rows: []Row{{Name: "own", Share: 1, Current: 2}}, Incident: 2, Total: Row{Share: 1, Current: 2}}
+	b.Reset()
+	if err := WriteAccounts(&b, []string{"one", "two"}, []Account{acc, other}); err != nil {
+		t.Fatal(err)
+	}
+	for _, line := range strings.Split(b.String(), "\n") {
+		if f := strings.Fields(line); len(f) > 0 && f[0] == "own" && strings.Join(f, " ") != "own 1.0000 2.000 0.000" {
+			t.Errorf("a destination of one account only: %q", line)
+		}
+	}
+}
