@@ -8,14 +8,14 @@ import "math"
 // kernel.go. Accuracy is measured in elementary_test.go: about one unit in the
 // last place in the range used by the film kernel.
 
-// Cody-Waite reduction by π/2: three parts of 33 bits, so that the products
-// with an integer below 2^20 are exact (the splitting of W. J. Cody and
-// W. Waite, Software Manual for the Elementary Functions, 1980, ch. 8).
+// Cody-Waite reduction by π/2: the product of the first part, of 33 bits, with
+// an integer below 2^20 is exact, and that with the second part errs by less
+// than 2^-67 (the splitting of W. J. Cody and W. Waite, Software Manual for the
+// Elementary Functions, 1980, ch. 8).
 const (
 	twoOverPi = 2 / math.Pi
 	pio2a     = 1.57079632673412561417e+00 // first 33 bits of π/2
-	pio2b     = 6.07710050630396597660e-11 // next 33 bits
-	pio2c     = 2.02226624879595063154e-21 // the rest
+	pio2b     = 6.07710050650619224932e-11 // the rest
 
 	// Adding and subtracting 1.5 · 2^52 rounds to the nearest integer.
 	roundMagic = 3 << 51
@@ -50,7 +50,7 @@ func sincosRow(sin, cos, x []float64) {
 		t := float64(v*twoOverPi) + roundMagic
 		q := math.Float64bits(t)
 		f := t - roundMagic
-		r := ((v - float64(f*pio2a)) - float64(f*pio2b)) - float64(f*pio2c)
+		r := (v - float64(f*pio2a)) - float64(f*pio2b)
 		z := float64(r * r)
 		z2 := float64(z * z)
 		s := r + float64(r*z*((sin3+float64(z*sin5))+
@@ -76,20 +76,15 @@ const (
 	minExponent = -700
 )
 
-// Taylor coefficients 1/3! .. 1/13!; on |r| <= ln 2 / 2 the remainder of
-// expm1 is below 2^-56 relative.
+// Coefficients of c = r - r² (exp1 + r² exp2 + ...) in exp(r) = 1 + r + r c/(2-c)
+// on |r| <= ln 2 / 2, relative error below 2^-59 (the figures of the freely
+// distributable fdlibm, e_exp.c).
 const (
-	inv3  = 1.0 / 6
-	inv4  = 1.0 / 24
-	inv5  = 1.0 / 120
-	inv6  = 1.0 / 720
-	inv7  = 1.0 / 5040
-	inv8  = 1.0 / 40320
-	inv9  = 1.0 / 362880
-	inv10 = 1.0 / 3628800
-	inv11 = 1.0 / 39916800
-	inv12 = 1.0 / 479001600
-	inv13 = 1.0 / 6227020800
+	exp1 = 1.66666666666666019037e-01
+	exp2 = -2.77777777770155933842e-03
+	exp3 = 6.61375632143793436117e-05
+	exp4 = -1.65339022054652515390e-06
+	exp5 = 4.13813679705723846039e-08
 )
 
 // expRow stores exp(z) and 1 - exp(z) of each z <= 0, both with their full
@@ -105,10 +100,9 @@ func expRow(e, m, z []float64) {
 		f := t - roundMagic
 		r := (v - float64(f*ln2a)) - float64(f*ln2b)
 		r2 := float64(r * r)
-		r4 := float64(r2 * r2)
-		p := r + float64(r2*(((0.5+float64(r*inv3))+float64(r2*(inv4+float64(r*inv5))))+
-			float64(r4*(((inv6+float64(r*inv7))+float64(r2*(inv8+float64(r*inv9))))+
-				float64(r4*((inv10+float64(r*inv11))+float64(r2*(inv12+float64(r*inv13)))))))))
+		r4 := r2 * r2
+		c := r - float64(r2*((exp1+float64(r2*exp2))+float64(r4*((exp3+float64(r2*exp4))+float64(r4*exp5)))))
+		p := r + r*c/(2-c)
 		scale := math.Float64frombits((math.Float64bits(t) + 1023) << 52)
 		e[i] = scale + float64(scale*p)
 		m[i] = (1 - scale) - float64(scale*p)

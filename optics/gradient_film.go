@@ -74,7 +74,7 @@ func (rv *reversal) trace(w *waveRow, n, k []float64, d float64, e []float64) {
 		v := -2 * kd * qi
 		m := 1 - e[i]
 		if v > -0.01 {
-			m = -v * (1 + v*(0.5+v*(inv3+v*(inv4+v*(inv5+v*inv6)))))
+			m = -v * (1 + v*(0.5+v*(1.0/6+v*(1.0/24+v*(1.0/120+v*(1.0/720))))))
 		}
 		f.qr[i], f.qi[i], f.kr[i], f.m[i], f.phase[i] = qr, qi, kr, m, kd*qr
 		s.e[i], rv.turn.kd[i] = e[i], kd

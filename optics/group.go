@@ -10,9 +10,16 @@ type mediumRow struct {
 	lossless       bool // the medium in front: q and ε are real and d stays 0
 }
 
-// set fills the lanes of n. It reports whether |q|² of a lane is less than the
-// share of n0² below which q² has lost digits.
+// set fills the lanes of n. It reports whether q of a lane is nearly critical.
 func (m *mediumRow) set(w *waveRow, n, k []float64, normal bool) (critical bool) {
+	if normal {
+		fastNormalMediumRow(m, n, k)
+		return false
+	}
+	return fastObliqueMediumRow(m, w, n, k)
+}
+
+func obliqueMediumRow(m *mediumRow, w *waveRow, n, k []float64) (critical bool) {
 	b := len(n)
 	if b > lanes {
 		b = lanes
@@ -20,13 +27,6 @@ func (m *mediumRow) set(w *waveRow, n, k []float64, normal bool) (critical bool)
 	n, k = n[:b], k[:b]
 	for i := range n {
 		m.er[i], m.ei[i], m.one[i] = (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i], 1
-	}
-	if normal {
-		copy(m.qr[:b], n)
-		copy(m.qi[:b], k)
-		return false
-	}
-	for i := range n {
 		kr := float64((n[i]-w.n0[i])*(n[i]+w.n0[i])) - float64(k[i]*k[i]) + w.q0sq[i]
 		qr, qi := rootUpper(kr, 2*n[i]*k[i])
 		m.qr[i], m.qi[i] = qr, qi
@@ -35,6 +35,18 @@ func (m *mediumRow) set(w *waveRow, n, k []float64, normal bool) (critical bool)
 		}
 	}
 	return critical
+}
+
+func normalMediumRow(m *mediumRow, n, k []float64) {
+	b := len(n)
+	if b > lanes {
+		b = lanes
+	}
+	n, k = n[:b], k[:b]
+	for i := range n {
+		m.qr[i], m.qi[i] = n[i], k[i]
+		m.er[i], m.ei[i], m.one[i] = (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i], 1
+	}
 }
 
 // wave returns h and l of the admittance η = h/l of polarisation p: q/1 for s
@@ -96,7 +108,8 @@ func grow(s []float64, n int) []float64 {
 	return s[:n]
 }
 
-// run solves the group for b lanes.
+// run finds r and the losses in units of the fields for b lanes. What they
+// are in units of the incident flux is left to fluxes or deliver.
 func (g *group) run(w *waveRow, films *filmTable, in, back *mediumRow, b int, normal bool) {
 	g.in, g.back = in, back
 	rows, pols := 1, 2
@@ -124,17 +137,19 @@ func (g *group) run(w *waveRow, films *filmTable, in, back *mediumRow, b int, no
 	}
 	for p := range pols {
 		g.amplitudes(p, b)
-		g.fluxes(p, b)
 	}
 }
 
 // begin sets the fields of the single wave behind the films, and its flux.
 func (g *group) begin(f *polarRow, p, b int) {
+	hr, hi, lr, li := g.back.wave(p)
+	fastSingleWaveRow(f, &g.t[p], hr, hi, lr, li, b)
+}
+
+func singleWaveRow(f *polarRow, t, hr, hi, lr, li *[lanes]float64, b int) {
 	if b > lanes {
 		b = lanes
 	}
-	hr, hi, lr, li := g.back.wave(p)
-	t := &g.t[p]
 	for i := range b {
 		f.ur[i], f.ui[i], f.vr[i], f.vi[i] = lr[i], li[i], hr[i], hi[i]
 		t[i] = dot(hr[i], hi[i], lr[i], li[i])
@@ -156,89 +171,92 @@ func (g *group) crossRows(w *waveRow, films *filmTable, b int, normal bool) {
 		}
 		film := g.first + j*g.step
 		n, k := films.row(film, b)
-		at := j * lanes
-		e := g.e[at : at+b]
-		for i := range b {
-			f.kd[i] = w.k0[i] * films.d[film]
-		}
-		if f.phases(w, n, k, e, normal) {
-			f.correctPhase(w, n, k, films.d[film])
-		}
+		d, at := films.d[film], j*lanes
+		e, as := g.e[at:at+b], g.a[0][at:at+b]
 		if normal {
-			normalMatrixRow(f, n, k, e)
+			if fastNormalPhases(f, w, n, k, e, d) {
+				f.correctPhase(w, n, k, d)
+			}
+			fastNormalFields(f, &g.fields[cur], &g.fields[next], n, k, e, as)
 		} else {
-			matrixRows(f, n, k, e)
-			fieldsRow(f, &f.matrix[1], &g.fields[cur][1], &g.fields[next][1], g.a[1][at:at+b], 0)
+			if fastObliquePhases(f, w, n, k, e, d) {
+				f.correctPhase(w, n, k, d)
+			}
+			fastObliqueFields(f, &g.fields[cur], &g.fields[next], n, k, e, as, g.a[1][at:at+b])
 		}
-		fieldsRow(f, &f.matrix[0], &g.fields[cur][0], &g.fields[next][0], g.a[0][at:at+b], 0)
 		cur = next
 		g.keepOrder(cur, j, b, normal)
 	}
 }
 
-// phases finds path and phase factor of each lane from kd and reports whether a
-// phase is long.
-func (f *filmRow) phases(w *waveRow, n, k, e []float64, normal bool) (long bool) {
-	b := len(n)
-	if normal {
-		long = normalPathRow(f, n, k)
-	} else {
-		long = pathRow(f, w, n, k)
-	}
-	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
-	expRow(e, f.m[:b], f.decay[:b])
-	return long
-}
-
 // singleRow is the work of a single wavelength, for which the lanes hold films
 // instead.
 type singleRow struct {
-	wave    waveRow // of lane 0 in every lane
+	wave    waveRow // n0 and q0sq of lane 0 in every lane; k0 times the thickness of the film
 	n, k, e [lanes]float64
 }
 
 // crossSingle does the same for lane 0 alone: everything but the fields is
 // found for many films at a time.
 func (g *group) crossSingle(w *waveRow, films *filmTable, normal bool) {
-	f, o := &g.film, &g.single
+	f := &g.film
 	cur := 0
 	if g.history {
 		cur = g.count
 	}
 	for end := g.count; end > 0; {
 		start := max(0, end-lanes)
-		b := end - start
-		for i := range b {
-			film := g.first + (start+i)*g.step
-			n, k := films.row(film, 1)
-			o.n[i], o.k[i], f.kd[i] = n[0], k[0], w.k0[0]*films.d[film]
-			o.wave.n0[i], o.wave.q0sq[i] = w.n0[0], w.q0sq[0]
-		}
-		if f.phases(&o.wave, o.n[:b], o.k[:b], o.e[:b], normal) {
-			for i := range b {
-				f.correctLane(i, w, 0, o.n[i], o.k[i], films.d[g.first+(start+i)*g.step])
-			}
-		}
-		if normal {
-			normalMatrixRow(f, o.n[:b], o.k[:b], o.e[:b])
-		} else {
-			matrixRows(f, o.n[:b], o.k[:b], o.e[:b])
-		}
-		for i := b - 1; i >= 0; i-- {
-			j := start + i
+		g.matrices(w, films, start, end-start, normal)
+		for j := end - 1; j >= start; j-- {
 			next := cur
 			if g.history {
 				next = j
 			}
-			g.e[j*lanes] = o.e[i]
-			fieldsRow(f, &f.matrix[0], &g.fields[cur][0], &g.fields[next][0], g.a[0][j*lanes:j*lanes+1], i)
+			at := j * lanes
+			g.e[at] = g.single.e[j-start]
+			fieldsRow(f, &f.matrix[0], &g.fields[cur][0], &g.fields[next][0], g.a[0][at:at+1], j-start)
 			if !normal {
-				fieldsRow(f, &f.matrix[1], &g.fields[cur][1], &g.fields[next][1], g.a[1][j*lanes:j*lanes+1], i)
+				fieldsRow(f, &f.matrix[1], &g.fields[cur][1], &g.fields[next][1], g.a[1][at:at+1], j-start)
 			}
 			cur = next
 			g.keepOrder(cur, j, 1, normal)
 		}
 		end = start
+	}
+}
+
+// matrices finds the matrices of b films from film number start of the group
+// for the wave in lane 0.
+func (g *group) matrices(w *waveRow, films *filmTable, start, b int, normal bool) {
+	f, o := &g.film, &g.single
+	for i := range b {
+		film := g.first + (start+i)*g.step
+		at := film*films.stride + films.offset
+		o.n[i], o.k[i] = films.n[at], films.k[at]
+		o.wave.n0[i], o.wave.q0sq[i], o.wave.k0[i] = w.n0[0], w.q0sq[0], w.k0[0]*films.d[film]
+	}
+	// Whole vectors: the last film fills up.
+	full := min((b+vectorLanes-1)/vectorLanes*vectorLanes, lanes)
+	for i := b; i < full; i++ {
+		o.n[i], o.k[i] = o.n[b-1], o.k[b-1]
+		o.wave.n0[i], o.wave.q0sq[i], o.wave.k0[i] = o.wave.n0[b-1], o.wave.q0sq[b-1], o.wave.k0[b-1]
+	}
+	n, k, e := o.n[:full], o.k[:full], o.e[:full]
+	var long bool
+	if normal {
+		long = fastNormalPhases(f, &o.wave, n, k, e, 1)
+	} else {
+		long = fastObliquePhases(f, &o.wave, n, k, e, 1)
+	}
+	if long {
+		for i := range b {
+			f.correctLane(i, w, 0, n[i], k[i], films.d[g.first+(start+i)*g.step])
+		}
+	}
+	if normal {
+		fastNormalMatrixRow(f, n, k, e)
+	} else {
+		fastMatrixRows(f, n, k, e)
 	}
 }
 
@@ -259,9 +277,9 @@ const (
 // rescale brings fields that have grown or shrunk beyond the bounds back to
 // the order of one, by an exact power of two, and notes the factor.
 func (g *group) rescale(f *fieldRow, j, b int, normal bool) {
-	out := outOfOrder(&f[0], b)
+	out := fastOrderRow(&f[0], b)
 	if !normal {
-		out = out || outOfOrder(&f[1], b)
+		out = out || fastOrderRow(&f[1], b)
 	}
 	if !out {
 		return
@@ -275,28 +293,39 @@ func (g *group) rescale(f *fieldRow, j, b int, normal bool) {
 	}
 }
 
-// outOfOrder reports whether the fields of a lane are beyond the bounds.
-func outOfOrder(f *polarRow, b int) (out bool) {
+// orderRow reports whether the fields of a lane are beyond the bounds.
+func orderRow(f *polarRow, b int) (out bool) {
 	if b > lanes {
 		b = lanes
 	}
 	for i := range b {
-		s := dot(f.ur[i], f.ui[i], f.ur[i], f.ui[i]) + dot(f.vr[i], f.vi[i], f.vr[i], f.vi[i])
-		if !(s < largeField && s > smallField) {
+		if !f.inOrder(i) {
 			out = true
 		}
 	}
 	return out
 }
 
+// rescaleFields leaves lanes within the bounds alone, so that the bits of one do
+// not depend on its neighbours.
 func rescaleFields(f *polarRow, scale, a []float64) {
 	for i := range scale {
+		scale[i] = 1
+		if f.inOrder(i) {
+			continue
+		}
 		_, exp := math.Frexp(math.Abs(f.ur[i]) + math.Abs(f.ui[i]) + math.Abs(f.vr[i]) + math.Abs(f.vi[i]))
 		c := math.Ldexp(1, -exp)
 		f.ur[i], f.ui[i], f.vr[i], f.vi[i] = c*f.ur[i], c*f.ui[i], c*f.vr[i], c*f.vi[i]
 		scale[i] = c * c
 		a[i] *= c * c
 	}
+}
+
+// inOrder reports whether the fields of lane i are within the bounds.
+func (f *polarRow) inOrder(i int) bool {
+	s := dot(f.ur[i], f.ui[i], f.ur[i], f.ui[i]) + dot(f.vr[i], f.vi[i], f.vr[i], f.vi[i])
+	return s < largeField && s > smallField
 }
 
 // amplitudes finds r, the reflectance and the flux per field in front, for
@@ -309,7 +338,7 @@ func (g *group) amplitudes(p, b int) {
 	hr, hi, lr, li := in.wave(p)
 	rr, ri, r, gain, d := &g.rr[p], &g.ri[p], &g.r[p], &g.g[p], &g.d[p]
 	if in.lossless {
-		losslessAmplitudeRow(r, rr, ri, gain, hr, lr, f, b)
+		fastLosslessAmplitudeRow(r, rr, ri, gain, hr, lr, f, b)
 		return
 	}
 	for i := range b {
@@ -352,17 +381,13 @@ func (g *group) fluxes(p, b int) {
 	gain, t, a := g.film.phase[:b], g.t[p][:b], g.a[p]
 	copy(gain, g.g[p][:b])
 	for j := range g.count {
-		fluxRow(gain, a[j*lanes:j*lanes+b], g.e[j*lanes:j*lanes+b])
+		aj := a[j*lanes : j*lanes+b]
+		shareRow(aj, gain, aj, g.e[j*lanes:j*lanes+b])
 		if g.scaled[j] {
-			scale := g.scale[(2*j+p)*lanes:][:b]
-			for i := range scale {
-				gain[i] *= scale[i]
-			}
+			multiply(gain, g.scale[(2*j+p)*lanes:])
 		}
 	}
-	for i := range t {
-		t[i] *= gain[i]
-	}
+	multiply(t, gain)
 	if !g.mixed {
 		return
 	}
@@ -375,12 +400,63 @@ func (g *group) fluxes(p, b int) {
 	}
 }
 
-// fluxRow multiplies the losses of a film by the flux per field in front of it,
+// deliver does the work of fluxes for b lanes from lane skip on and stores the
+// absorptances of the mean over the polarisations, film j at a[j*stride:]. The
+// weights are powers of two, so that the bits are those of weighing later.
+func (g *group) deliver(r, t, a []float64, stride, skip, b int, ws, wp float64) {
+	gs, gp := g.film.phase[skip:skip+b], g.film.decay[skip:skip+b]
+	weigh(r[:b], g.r[0][skip:], g.r[1][skip:], ws, wp)
+	fastScaleRow(gs, g.g[0][skip:skip+b], ws)
+	if wp != 0 {
+		fastScaleRow(gp, g.g[1][skip:skip+b], wp)
+	}
+	for j := range g.count {
+		at := j*lanes + skip
+		dst, e, as := a[j*stride:][:b], g.e[at:at+b], g.a[0][at:at+b]
+		if wp == 0 {
+			fastShareRow(dst, gs, as, e)
+		} else {
+			fastMeanShareRow(dst, gs, gp, as, g.a[1][at:at+b], e)
+		}
+		if g.scaled[j] {
+			multiply(gs, g.scale[2*j*lanes+skip:])
+			multiply(gp, g.scale[(2*j+1)*lanes+skip:])
+		}
+	}
+	multiply(gs, g.t[0][skip:])
+	if wp == 0 {
+		copy(t, gs)
+		return
+	}
+	multiply(gp, g.t[1][skip:])
+	for i := range t[:b] {
+		t[i] = gs[i] + gp[i]
+	}
+}
+
+func multiply(dst, by []float64) {
+	by = by[:len(dst)]
+	for i := range dst {
+		dst[i] *= by[i]
+	}
+}
+
+// shareRow multiplies the losses of a film by the flux per field in front of it
 // and that flux by the film's transmittance.
-func fluxRow(gain, a, e []float64) {
-	a, e = a[:len(gain)], e[:len(gain)]
-	for i, v := range gain {
-		a[i] *= v
-		gain[i] = v * e[i]
+func shareRow(dst, gs, as, e []float64) {
+	gs, as, e = gs[:len(dst)], as[:len(dst)], e[:len(dst)]
+	for i := range dst {
+		dst[i] = gs[i] * as[i]
+		gs[i] *= e[i]
+	}
+}
+
+// meanShareRow is shareRow for the sum of both polarisations.
+func meanShareRow(dst, gs, gp, as, ap, e []float64) {
+	gs, gp, as, ap, e = gs[:len(dst)], gp[:len(dst)], as[:len(dst)], ap[:len(dst)], e[:len(dst)]
+	for i := range dst {
+		dst[i] = float64(gs[i]*as[i]) + float64(gp[i]*ap[i])
+		gs[i] *= e[i]
+		gp[i] *= e[i]
 	}
 }

@@ -48,7 +48,6 @@ type polarRow struct {
 // filmRow is the work of one film on one block: the optical path of each wave,
 // the parts of its complex phase factor and what they do to the fields.
 type filmRow struct {
-	kd       [lanes]float64 // k0 d
 	qr, qi   [lanes]float64 // normal wave number over k0, Im q >= 0
 	kr       [lanes]float64 // Re q²
 	phase    [lanes]float64 // x = k0 d Re q
@@ -91,9 +90,26 @@ func rootUpper(kr, ki float64) (qr, qi float64) {
 	return u, t
 }
 
-// pathRow finds the optical path of a film from its index and kd at oblique
-// incidence. It reports whether a phase is long.
-func pathRow(f *filmRow, w *waveRow, n, k []float64) (long bool) {
+// obliquePhases finds the path and the phase factor of a film of thickness d
+// at oblique incidence. It reports whether a phase is long.
+func obliquePhases(f *filmRow, w *waveRow, n, k, e []float64, d float64) (long bool) {
+	b := len(n)
+	long = obliquePathRow(f, w, n, k, d)
+	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
+	expRow(e, f.m[:b], f.decay[:b])
+	return long
+}
+
+// normalPhases is obliquePhases at normal incidence.
+func normalPhases(f *filmRow, w *waveRow, n, k, e []float64, d float64) (long bool) {
+	b := len(n)
+	long = normalPathRow(f, w, n, k, d)
+	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
+	expRow(e, f.m[:b], f.decay[:b])
+	return long
+}
+
+func obliquePathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool) {
 	b := len(n)
 	if b > lanes {
 		b = lanes
@@ -102,9 +118,10 @@ func pathRow(f *filmRow, w *waveRow, n, k []float64) (long bool) {
 	for i := range n {
 		kr := float64((n[i]-w.n0[i])*(n[i]+w.n0[i])) - float64(k[i]*k[i]) + w.q0sq[i]
 		qr, qi := rootUpper(kr, 2*n[i]*k[i])
-		x := f.kd[i] * qr
+		kd := w.k0[i] * d
+		x := kd * qr
 		f.qr[i], f.qi[i], f.kr[i] = qr, qi, kr
-		f.phase[i], f.decay[i] = x, -2*f.kd[i]*qi
+		f.phase[i], f.decay[i] = x, -2*kd*qi
 		if x > longPhase {
 			long = true
 		}
@@ -112,21 +129,38 @@ func pathRow(f *filmRow, w *waveRow, n, k []float64) (long bool) {
 	return long
 }
 
-// normalPathRow is pathRow at normal incidence, where q is the index itself.
-func normalPathRow(f *filmRow, n, k []float64) (long bool) {
+// normalPathRow knows that q is the index itself.
+func normalPathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool) {
 	b := len(n)
 	if b > lanes {
 		b = lanes
 	}
 	n, k = n[:b], k[:b]
 	for i := range n {
-		x := f.kd[i] * n[i]
-		f.phase[i], f.decay[i] = x, -2*f.kd[i]*k[i]
+		kd := w.k0[i] * d
+		x := kd * n[i]
+		f.phase[i], f.decay[i] = x, -2*kd*k[i]
 		if x > longPhase {
 			long = true
 		}
 	}
 	return long
+}
+
+// obliqueFields carries the fields of a block from the back of a film to its
+// front, both polarisations. in and out may be the same rows. as and ap receive
+// the flux that stays in the film in units of the scaled fields at its front.
+func obliqueFields(f *filmRow, in, out *fieldRow, n, k, e, as, ap []float64) {
+	matrixRows(f, n, k, e)
+	fieldsRow(f, &f.matrix[0], &in[0], &out[0], as, 0)
+	fieldsRow(f, &f.matrix[1], &in[1], &out[1], ap, 0)
+}
+
+// normalFields is obliqueFields at normal incidence, where both polarisations
+// are the same.
+func normalFields(f *filmRow, in, out *fieldRow, n, k, e, as []float64) {
+	normalMatrixRow(f, n, k, e)
+	fieldsRow(f, &f.matrix[0], &in[0], &out[0], as, 0)
 }
 
 // matrixRows finds the matrices of a film for both polarisations.
@@ -153,16 +187,7 @@ func matrixRows(f *filmRow, n, k, e []float64) {
 	n, k, e = n[:b], k[:b], e[:b]
 	s, p := &f.matrix[0], &f.matrix[1]
 	for i := range n {
-		h := 0.5 * f.m[i]
-		g := 1 - h
-		sr, si := f.cos[i]*h, -f.sin[i]*g
-		f.cr[i], f.ci[i] = f.cos[i]*g, -f.sin[i]*h
-		es := e[i] * f.sin[i]
-		lp, lq := h*g, es*f.cos[i]
-		lm, le := float64(h*h), float64(es*f.sin[i])
-		sum := lm + le
-
-		qr, qi, kr := f.qr[i], f.qi[i], f.kr[i]
+		qr, qi := f.qr[i], f.qi[i]
 		er, ei := (n[i]-k[i])*(n[i]+k[i]), 2*n[i]*k[i]
 		e2 := float64(er*er) + float64(ei*ei)
 		qr2, qi2 := float64(qr*qr), float64(qi*qi)
@@ -170,22 +195,30 @@ func matrixRows(f *filmRow, n, k, e []float64) {
 		inv := 1 / (e2 * q2)
 		iq, ie := inv*e2, inv*q2
 
-		ar, ai := dot(sr, si, qr, qi)*iq, cross(sr, si, qr, qi)*iq // σ = S/q
-		br, bi := mulRe(ar, ai, kr, ei), mulIm(ar, ai, kr, ei)     // σ q²
-		s.ar[i], s.ai[i], s.br[i], s.bi[i] = ar, ai, br, bi
+		h := 0.5 * f.m[i]
+		g := 1 - h
+		es := e[i] * f.sin[i]
+		lp, lq := h*g, es*f.cos[i]
+		lm, le := float64(h*h), float64(es*f.sin[i])
+		both := lm + le
 		pr, qq := float64(lp*qr), float64(lq*qi)
 		s.uu[i], s.vv[i] = pr+qq, (pr-qq)*iq
 		s.vu[i] = 2 * (float64(lm*qr2) - float64(le*qi2)) * iq
-		s.wu[i] = sum * ei * iq
-
-		p.ar[i], p.ai[i] = dot(br, bi, er, ei)*ie, cross(br, bi, er, ei)*ie // σ q²/ε
-		p.br[i], p.bi[i] = mulRe(ar, ai, er, ei), mulIm(ar, ai, er, ei)     // σ ε
-		hr, hi := dot(er, ei, qr, qi), cross(er, ei, qr, qi)                // η |q|²
+		s.wu[i] = both * ei * iq
+		hr, hi := dot(er, ei, qr, qi), cross(er, ei, qr, qi) // η |q|²
 		pr, qq = float64(lp*hr), float64(lq*hi)
 		p.uu[i], p.vv[i] = (pr+qq)*iq, (pr-qq)*ie
 		inv *= 2
 		p.vu[i] = (float64(lm*float64(hr*hr)) - float64(le*float64(hi*hi))) * inv
-		p.wu[i] = sum * hr * hi * inv
+		p.wu[i] = both * hr * hi * inv
+
+		sr, si := f.cos[i]*h, -f.sin[i]*g
+		f.cr[i], f.ci[i] = f.cos[i]*g, -f.sin[i]*h
+		ar, ai := dot(sr, si, qr, qi)*iq, cross(sr, si, qr, qi)*iq       // σ = S/q
+		br, bi := mulRe(ar, ai, f.kr[i], ei), mulIm(ar, ai, f.kr[i], ei) // σ q²
+		s.ar[i], s.ai[i], s.br[i], s.bi[i] = ar, ai, br, bi
+		p.br[i], p.bi[i] = mulRe(ar, ai, er, ei), mulIm(ar, ai, er, ei)     // σ ε
+		p.ar[i], p.ai[i] = dot(br, bi, er, ei)*ie, cross(br, bi, er, ei)*ie // σ q²/ε
 	}
 }
 
@@ -219,10 +252,8 @@ func normalMatrixRow(f *filmRow, n, k, e []float64) {
 	}
 }
 
-// fieldsRow carries the fields of one polarisation from the back of a film to
-// its front; in and out may be the same row. a receives the flux that stays in
-// the film in units of the scaled fields at its front. The film's matrix for
-// lane i is at position i+at.
+// fieldsRow carries the fields of one polarisation. The film's matrix for lane i
+// is at position i+at.
 func fieldsRow(f *filmRow, x *matrixRow, in, out *polarRow, a []float64, at int) {
 	b := len(a)
 	if b > lanes {
@@ -232,16 +263,16 @@ func fieldsRow(f *filmRow, x *matrixRow, in, out *polarRow, a []float64, at int)
 	for i := range a {
 		j := (i + at) & (lanes - 1)
 		ur, ui, vr, vi := in.ur[i], in.ui[i], in.vr[i], in.vi[i]
-		cr, ci := f.cr[j], f.ci[j]
-		out.ur[i] = mulRe(cr, ci, ur, ui) + mulRe(x.ar[j], x.ai[j], vr, vi)
-		out.ui[i] = mulIm(cr, ci, ur, ui) + mulIm(x.ar[j], x.ai[j], vr, vi)
-		out.vr[i] = mulRe(cr, ci, vr, vi) + mulRe(x.br[j], x.bi[j], ur, ui)
-		out.vi[i] = mulIm(cr, ci, vr, vi) + mulIm(x.br[j], x.bi[j], ur, ui)
 		loss := float64(x.uu[j]*dot(ur, ui, ur, ui)) + float64(x.vv[j]*dot(vr, vi, vr, vi)) +
 			(float64(x.vu[j]*dot(vr, vi, ur, ui)) + float64(x.wu[j]*cross(vr, vi, ur, ui)))
 		if !(loss > 0) {
 			loss = 0
 		}
+		cr, ci, ar, ai, br, bi := f.cr[j], f.ci[j], x.ar[j], x.ai[j], x.br[j], x.bi[j]
+		out.ur[i] = mulRe(cr, ci, ur, ui) + mulRe(ar, ai, vr, vi)
+		out.ui[i] = mulIm(cr, ci, ur, ui) + mulIm(ar, ai, vr, vi)
+		out.vr[i] = mulRe(cr, ci, vr, vi) + mulRe(br, bi, ur, ui)
+		out.vi[i] = mulIm(cr, ci, vr, vi) + mulIm(br, bi, ur, ui)
 		a[i] = loss
 	}
 }

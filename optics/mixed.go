@@ -69,8 +69,13 @@ func (bl *block) prepare(incoherent []bool, films int) {
 // solve computes R, T and the absorptances of b lanes. The wave rows and the
 // front and back media are set by the caller.
 func (bl *block) solve(films *filmTable, b int, normal bool) {
+	bl.run(films, b, normal)
+	bl.shares(b, normal)
+}
+
+// run solves all groups but for their shares.
+func (bl *block) run(films *filmTable, b int, normal bool) {
 	n := len(bl.thick)
-	bl.a = bl.sums
 	for i, j := range bl.thick {
 		nn, kk := films.row(j, b)
 		bl.media[i].set(&bl.wave, nn, kk, normal)
@@ -89,12 +94,27 @@ func (bl *block) solve(films *filmTable, b int, normal bool) {
 			bl.reverse[i].run(&bl.wave, films, back, in, b, normal)
 		}
 	}
-	bl.balance(0, b)
+}
+
+// shares finds R, T and the absorptances from the solved groups.
+func (bl *block) shares(b int, normal bool) {
+	bl.a = bl.sums
+	bl.sharesOf(0, b)
 	if normal {
 		bl.a[1] = bl.a[0] // the same light
 	} else {
-		bl.balance(1, b)
+		bl.sharesOf(1, b)
 	}
+}
+
+func (bl *block) sharesOf(p, b int) {
+	n := len(bl.thick)
+	for i := range n {
+		bl.forward[i].fluxes(p, b)
+		bl.reverse[i].fluxes(p, b)
+	}
+	bl.forward[n].fluxes(p, b)
+	bl.balance(p, b)
 }
 
 // onePass finds the transmittance of incoherent film i. A film in which the

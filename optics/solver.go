@@ -50,31 +50,64 @@ func (s *Solver) Solve(dst *Response, st Stack, w Wave) error {
 	if err != nil {
 		return err
 	}
-	s.block.solve(&s.table, 1, normal)
 	ws, wp := w.Polarization.weights()
 	if normal {
 		ws, wp = 1, 0
 	}
+	s.block.run(&s.table, 1, normal)
+	if len(s.block.thick) == 0 {
+		s.block.forward[0].deliverSingle(dst, ws, wp)
+		return nil
+	}
+	s.block.shares(1, normal)
 	s.respond(dst, len(st.Films), ws, wp)
 	return nil
+}
+
+// deliverSingle is deliver for lane 0 alone.
+func (g *group) deliverSingle(r *Response, ws, wp float64) {
+	r.A = grow(r.A, g.count)
+	gs, gp := ws*g.g[0][0], wp*g.g[1][0]
+	if wp == 0 {
+		r.R = ws * g.r[0][0]
+		for j := range r.A {
+			at := j * lanes
+			r.A[j] = gs * g.a[0][at]
+			gs *= g.e[at]
+			if g.scaled[j] {
+				gs *= g.scale[2*at]
+			}
+		}
+		r.T = gs * g.t[0][0]
+		return
+	}
+	r.R = float64(ws*g.r[0][0]) + float64(wp*g.r[1][0])
+	for j := range r.A {
+		at := j * lanes
+		r.A[j] = float64(gs*g.a[0][at]) + float64(gp*g.a[1][at])
+		gs, gp = gs*g.e[at], gp*g.e[at]
+		if g.scaled[j] {
+			gs, gp = gs*g.scale[2*at], gp*g.scale[2*at+lanes]
+		}
+	}
+	r.T = float64(gs*g.t[0][0]) + float64(gp*g.t[1][0])
 }
 
 // respond copies lane 0 of the solved block.
 func (s *Solver) respond(r *Response, films int, ws, wp float64) {
 	bl := &s.block
-	r.R, r.T, r.A = ws*bl.r[0][0], ws*bl.t[0][0], grow(r.A, films)
-	as := bl.a[0]
-	for j := range r.A {
-		r.A[j] = ws * as[j*lanes]
-	}
+	r.A = grow(r.A, films)
 	if wp == 0 {
+		r.R, r.T = ws*bl.r[0][0], ws*bl.t[0][0]
+		for j := range r.A {
+			r.A[j] = ws * bl.a[0][j*lanes]
+		}
 		return
 	}
 	r.R = float64(ws*bl.r[0][0]) + float64(wp*bl.r[1][0])
 	r.T = float64(ws*bl.t[0][0]) + float64(wp*bl.t[1][0])
-	ap := bl.a[1]
 	for j := range r.A {
-		r.A[j] = float64(ws*as[j*lanes]) + float64(wp*ap[j*lanes])
+		r.A[j] = float64(ws*bl.a[0][j*lanes]) + float64(wp*bl.a[1][j*lanes])
 	}
 }
 
@@ -142,20 +175,25 @@ func (bl *block) load(theta float64, wavelength, front, backN, backK []float64) 
 	w.angle.set(theta)
 	f.lossless = true
 	b := len(wavelength)
+	fastFrontRow(w, f, wavelength, front, w.angle.cos)
+	if bl.back.set(w, backN[:b], backK[:b], theta == 0) {
+		for i := range b {
+			bl.correctBack(i, backN[i], backK[i])
+		}
+	}
+}
+
+func frontRow(w *waveRow, m *mediumRow, wavelength, front []float64, cos float64) {
+	b := len(wavelength)
 	if b > lanes {
 		b = lanes
 	}
 	wavelength, front = wavelength[:b], front[:b]
 	for i := range wavelength {
 		n0 := front[i]
-		q0 := n0 * w.angle.cos
+		q0 := n0 * cos
 		w.wavelength[i], w.k0[i], w.n0[i], w.q0sq[i] = wavelength[i], 2*math.Pi/wavelength[i], n0, q0*q0
-		f.qr[i], f.er[i], f.one[i] = q0, n0*n0, 1
-	}
-	if bl.back.set(w, backN[:b], backK[:b], theta == 0) {
-		for i := range b {
-			bl.correctBack(i, backN[i], backK[i])
-		}
+		m.qr[i], m.er[i], m.one[i] = q0, n0*n0, 1
 	}
 }
 

@@ -142,15 +142,25 @@ func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
 		bl.load(s.Angle[a], s.Wavelength[w0:][:b], s.Front[w0:], s.BackN[w0:], s.BackK[w0:])
 		table.offset = w0
 		normal := s.Angle[a] == 0
-		bl.solve(&table, b, normal)
 		ws, wp := s.Polarization.weights()
 		if normal {
 			ws, wp = 1, 0
 		}
-		weigh(dst.R[a*w+w0:][:b], bl.r[0][:], bl.r[1][:], ws, wp)
-		weigh(dst.T[a*w+w0:][:b], bl.t[0][:], bl.t[1][:], ws, wp)
+		bl.run(&table, b, normal)
+		at := a*w + w0
+		r, t, shares := dst.R[at:], dst.T[at:], dst.A
+		if films > 0 {
+			shares = shares[a*films*w+w0:]
+		}
+		if len(bl.thick) == 0 {
+			bl.forward[0].deliver(r, t, shares, w, 0, b, ws, wp)
+			continue
+		}
+		bl.shares(b, normal)
+		weigh(r[:b], bl.r[0][:], bl.r[1][:], ws, wp)
+		weigh(t[:b], bl.t[0][:], bl.t[1][:], ws, wp)
 		for j := range films {
-			weigh(dst.A[(a*films+j)*w+w0:][:b], bl.a[0][j*lanes:], bl.a[1][j*lanes:], ws, wp)
+			weigh(shares[j*w:][:b], bl.a[0][j*lanes:], bl.a[1][j*lanes:], ws, wp)
 		}
 	}
 }
@@ -158,11 +168,21 @@ func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
 // weigh stores the mean of the intensities of both polarisations.
 func weigh(dst, s, p []float64, ws, wp float64) {
 	if wp == 0 {
-		for i := range dst {
-			dst[i] = ws * s[i]
-		}
-		return
+		fastScaleRow(dst, s[:len(dst)], ws)
+	} else {
+		fastMeanRow(dst, s[:len(dst)], p[:len(dst)], ws, wp)
 	}
+}
+
+func scaleRow(dst, s []float64, ws float64) {
+	s = s[:len(dst)]
+	for i := range dst {
+		dst[i] = ws * s[i]
+	}
+}
+
+func meanRow(dst, s, p []float64, ws, wp float64) {
+	s, p = s[:len(dst)], p[:len(dst)]
 	for i := range dst {
 		dst[i] = float64(ws*s[i]) + float64(wp*p[i])
 	}
@@ -190,23 +210,28 @@ func (s *Sweep) Validate() error {
 		if !(l > 0) || math.IsInf(l, 1) {
 			return fmt.Errorf("optics: sweep: wavelength %d: %g nm is not a positive number: %w", i, l, ErrInput)
 		}
-		shortest = min(shortest, l)
+		if l < shortest {
+			shortest = l
+		}
 	}
 	for i, a := range s.Angle {
 		if err := checkAngle(a); err != nil {
 			return fmt.Errorf("optics: sweep: angle %d: %w", i, err)
 		}
 	}
-	for i, n := range s.Front {
-		if usualIndex(n, 0) {
-			continue
-		}
-		if err := checkIndex(complex(n, 0)); err != nil {
-			return fmt.Errorf("optics: sweep: front medium, wavelength %g nm: %w", s.Wavelength[i], err)
+	if fastUnusualRow(s.Front, s.Front, MaxIndex) {
+		for i, n := range s.Front {
+			if err := checkIndex(complex(n, 0)); err != nil {
+				return fmt.Errorf("optics: sweep: front medium, wavelength %g nm: %w", s.Wavelength[i], err)
+			}
 		}
 	}
-	if i, _ := checkRow(s.BackN, s.BackK); i >= 0 {
-		return fmt.Errorf("optics: sweep: back medium, wavelength %g nm: %w", s.Wavelength[i], checkIndex(complex(s.BackN[i], s.BackK[i])))
+	if fastUnusualRow(s.BackN, s.BackK, MaxIndex) {
+		for i, n := range s.BackN {
+			if err := checkIndex(complex(n, s.BackK[i])); err != nil {
+				return fmt.Errorf("optics: sweep: back medium, wavelength %g nm: %w", s.Wavelength[i], err)
+			}
+		}
 	}
 	for j := range films {
 		if err := s.checkFilm(j, shortest); err != nil {
@@ -216,22 +241,22 @@ func (s *Sweep) Validate() error {
 	return nil
 }
 
+// checkFilm looks for anything unusual first, and only then asks value by value.
 func (s *Sweep) checkFilm(j int, shortest float64) error {
 	w, d := len(s.Wavelength), s.Thickness[j]
 	if err := checkThickness(d); err != nil {
 		return err
 	}
 	n, k := s.N[j*w:(j+1)*w], s.K[j*w:(j+1)*w]
-	i, largest := checkRow(n, k)
-	if i >= 0 {
-		return fmt.Errorf("wavelength %g nm: %w", s.Wavelength[i], checkIndex(complex(n[i], k[i])))
-	}
 	incoherent := s.Incoherent != nil && s.Incoherent[j]
-	// The sum n + k at the shortest wavelength bounds every phase of the film.
-	if !incoherent && 2*math.Pi*largest*d <= MaxPhase*shortest {
+	// n + k at the shortest wavelength bounds every phase of the film.
+	if !incoherent && !fastUnusualRow(n, k, min(MaxIndex, MaxPhase*shortest/(2*math.Pi*d))) {
 		return nil
 	}
 	for i := range n {
+		if err := checkIndex(complex(n[i], k[i])); err != nil {
+			return fmt.Errorf("wavelength %g nm: %w", s.Wavelength[i], err)
+		}
 		if err := checkPhase(complex(n[i], k[i]), d, s.Wavelength[i], incoherent); err != nil {
 			return err
 		}
@@ -239,24 +264,15 @@ func (s *Sweep) checkFilm(j int, shortest float64) error {
 	return nil
 }
 
-// checkRow returns the first position that checkIndex would refuse, or -1, and
-// the largest n + k.
-func checkRow(n, k []float64) (bad int, largest float64) {
+// unusualRow reports whether an index is not well inside its limits or n + k
+// exceeds the one given.
+func unusualRow(n, k []float64, limit float64) (unusual bool) {
 	k = k[:len(n)]
-	usual := true
-	for i, re := range n {
-		sum := re + k[i]
-		usual = usual && usualIndex(re, k[i])
-		if sum > largest {
-			largest = sum
+	for i := range n {
+		sum := n[i] + k[i]
+		if !(n[i] >= 0 && k[i] >= 0 && sum >= 2*MinIndex && sum <= limit) {
+			unusual = true
 		}
 	}
-	if !usual {
-		for i, re := range n {
-			if checkIndex(complex(re, k[i])) != nil {
-				return i, largest
-			}
-		}
-	}
-	return -1, largest
+	return unusual
 }
