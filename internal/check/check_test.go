@@ -47,3 +47,29 @@ func TestLoad(t *testing.T) {
 		}
 	}
 }
+
+func TestCompareCSV(t *testing.T) {
+	dir := t.TempDir()
+	write := func(name, body string) string {
+		p := filepath.Join(dir, name)
+		if err := os.WriteFile(p, []byte(body), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		return p
+	}
+	kept := write("kept.csv", "name,a\nx,1.000\n")
+	for body, want := range map[string]string{
+		"name,a\nx,1.0005\n": "",
+		"name,a\nx,1.01\n":   "deviation",
+		"name,a\nx,NaN\n":    "deviation",
+		"name,a\ny,1\n":      "want \"x\"",
+		"name,b\nx,1\n":      "want \"a\"",
+		"name,a\nx,1\nx,1\n": "lines",
+		"name,a,b\nx,1,2\n":  "fields",
+	} {
+		err := CompareCSV(kept, write("got.csv", body), 1e-3, 0, false)
+		if want == "" && err != nil || want != "" && (err == nil || !strings.Contains(err.Error(), want)) {
+			t.Errorf("%q: error %v, want %q", body, err, want)
+		}
+	}
+}
