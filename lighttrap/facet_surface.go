@@ -103,6 +103,21 @@ func (o *opticSide) compile(s *FacetSide, n1, n2 float64, opaque bool) {
 	}
 }
 
+// closed reports whether nothing goes through the interface or into its films.
+func (o *opticSide) closed() bool {
+	if len(o.cos) == 0 {
+		return false
+	}
+	stride := columns + 2*o.films
+	for i := range o.cos {
+		row := o.rows[i*stride : (i+1)*stride]
+		if row[colRS] < 1 || row[colRP] < 1 {
+			return false
+		}
+	}
+	return true
+}
+
 // correlation returns the geometric mean of two shares with their phase; 0 if
 // there is none.
 func correlation(a, b float64, phase []float64, i int) (re, im float64) {

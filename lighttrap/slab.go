@@ -47,6 +47,9 @@ func (s Slab) check() error {
 			return err
 		}
 	}
+	if x := s.opticalThickness(); math.IsInf(x, 1) {
+		return fmt.Errorf("lighttrap: slab: %g /cm and %g /cm in %g nm are not a finite optical thickness: %w", s.Absorption, s.FreeCarriers, s.Thickness, ErrInput)
+	}
 	for _, v := range []struct {
 		name  string
 		value float64
@@ -66,17 +69,17 @@ func (s Slab) opticalThickness() float64 {
 }
 
 // pass is the transmittance of one pass, 1 minus it, its derivative with respect
-// to αW, and the path of weak absorption in thicknesses.
-type pass struct{ t, loss, slope, path float64 }
+// to αW, the mean path of weak absorption and the shortest path in thicknesses.
+type pass struct{ t, loss, slope, path, shortest float64 }
 
 func diffusePass(x float64) pass {
 	t, loss := DiffuseTransmittance(x)
-	return pass{t, loss, diffuseSlope(x), 2}
+	return pass{t, loss, diffuseSlope(x), 2, 1}
 }
 
 func straightPass(x, cos float64) pass {
 	t := math.Exp(-x / cos)
-	return pass{t, -math.Expm1(-x / cos), -t / cos, 1 / cos}
+	return pass{t, -math.Expm1(-x / cos), -t / cos, 1 / cos, 1 / cos}
 }
 
 // Lambertian returns the balance of a slab whose faces scatter all light into an
@@ -151,13 +154,17 @@ func (s Slab) balance(f, p pass) Balance {
 	b.RearLoss = in * (1 - rb) * f.t / den
 	x := s.opticalThickness()
 	if x > 0 {
-		b.Absorbed = in * absorbed * s.Absorption / (s.Absorption + s.FreeCarriers)
-		b.FreeCarriers = in * absorbed * s.FreeCarriers / (s.Absorption + s.FreeCarriers)
+		share := s.Absorption / (s.Absorption + s.FreeCarriers)
+		b.Absorbed = in * absorbed * share
+		b.FreeCarriers = in * absorbed * (1 - share)
 		left := (b.Escaped + b.RearLoss) / in
-		if absorbed < 0.5 {
+		switch {
+		case absorbed < 0.5:
 			b.PathFactor = -math.Log1p(-absorbed) / x
-		} else {
+		case left > 0:
 			b.PathFactor = -math.Log(left) / x
+		default:
+			b.PathFactor = f.shortest // what strong absorption tends to
 		}
 	} else {
 		b.PathFactor = f.path + rb*p.path*(1+rf)/den

@@ -10,6 +10,10 @@ const maxCells = 1 << 12
 // another one is taken as spread evenly.
 const manyCells = 4096
 
+// manyPeriods is how far light may run along the wafer until rounding hides its
+// place in a cell.
+const manyPeriods = 1e9
+
 // Ways out of a cell other than a facet.
 const (
 	pastFacets = -1 // on the side it is on
@@ -45,8 +49,11 @@ func (w *worker) enterCell(f *surface, r *ray) {
 	r.pyr = r.d.z > 0
 	r.on = -1
 	r.stage = inCell
+	at := vec{math.Inf(1), 0, 0}
 	if f.period > 0 && r.entered {
-		at := f.toCell(vec{r.x / f.period, r.y / f.period, 0})
+		at = f.toCell(vec{r.x / f.period, r.y / f.period, 0})
+	}
+	if math.Abs(at.x)+math.Abs(at.y) < manyPeriods {
 		r.cx, r.cy = math.Floor(at.x), math.Floor(at.y)
 		r.p = vec{at.x - r.cx - 0.5, at.y - r.cy - 0.5, 0}
 	} else {

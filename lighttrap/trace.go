@@ -30,7 +30,7 @@ type Result struct {
 	Transmitted  Estimate   // leaves on the other side, or ends in an opaque medium
 	Absorbed     Estimate   // in the wafer, band to band
 	FreeCarriers Estimate   // in the wafer, by free carriers
-	Unfinished   Estimate   // still on its way after more than 10^5 facets, or along a valley without end
+	Unfinished   Estimate   // still on its way after more than 10^6 steps, or along a valley without end
 	FrontFilms   []Estimate // absorbed in the films of the front, from outside
 	RearFilms    []Estimate // absorbed in the films of the rear, from outside
 	Covers       []Estimate // absorbed in each cover with its films
@@ -184,6 +184,16 @@ func (w *worker) repeat(row []float64, l *Light, rays int, seed uint64, repetiti
 
 // launch sends one ray.
 func (w *worker) launch(l *Light) {
+	r := w.source(l)
+	if w.m.planar {
+		w.planeWafer(math.Abs(r.d.z), 1, l.Polarization)
+		return
+	}
+	w.follow(r)
+}
+
+// source returns a ray at the outermost interface.
+func (w *worker) source(l *Light) ray {
 	m := w.m
 	r := ray{w: 1, fresh: true, on: -1}
 	sin, cos := math.Sincos(l.Angle)
@@ -193,10 +203,6 @@ func (w *worker) launch(l *Light) {
 		s2 *= s2 * w.random(&r)
 		sin, cos = math.Sqrt(s2), math.Sqrt(1-s2)
 		azimuth = 2 * math.Pi * w.random(&r)
-	}
-	if m.planar {
-		w.planeWafer(cos, 1, l.Polarization)
-		return
 	}
 	sa, ca := math.Sincos(azimuth)
 	r.d = vec{sin * ca, sin * sa, -cos}
@@ -214,7 +220,7 @@ func (w *worker) launch(l *Light) {
 	if m.lattice && m.faces[m.lit].period == 0 {
 		r.x, r.y = m.period*w.random(&r), m.period*w.random(&r)
 	}
-	w.follow(r)
+	return r
 }
 
 // report turns the rows of the repetitions into means and standard errors.

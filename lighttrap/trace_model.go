@@ -7,7 +7,7 @@ import (
 
 // Limits of the tracer.
 const (
-	maxSteps     = 1 << 17 // steps of one ray with its parts; what is left then is Unfinished
+	maxSteps     = 1 << 20 // steps of one ray with its parts; what is left then is Unfinished
 	splitAbove   = 0.1     // both ways from a facet are followed if both carry this share
 	splitFirst   = 0.01    // the same for the first visit to the lit face
 	weightsAbove = 0.05    // absorption takes its share of a ray of this weight; weaker rays are absorbed as a whole or not at all
@@ -102,12 +102,22 @@ func (m *model) compile(w *Wafer, l *Light, depths []float64) error {
 	m.rearFilm = m.frontFilm + m.faces[m.front].side[sideOut].films
 	m.films = append(m.films, m.frontFilm, m.rearFilm)
 	m.cells = m.rearFilm + m.faces[m.rear].side[sideOut].films
-	if x := m.depth[m.front]; math.IsInf(x, 1) {
-		return fmt.Errorf("lighttrap: optical thickness %g of the wafer is not finite: %w", x, ErrInput)
+	for i, x := range m.depth {
+		if math.IsInf(x, 1) {
+			return fmt.Errorf("lighttrap: layer %d: optical thickness %g is not finite: %w", i, x, ErrInput)
+		}
+	}
+	if m.closed() {
+		return fmt.Errorf("lighttrap: no absorption and no way out for the light that enters: %w", ErrInput)
 	}
 	m.planar = w.Front.Texture == Planar && w.Rear.Texture == Planar
 	m.setLattice(w)
 	return m.setMesh(w, depths)
+}
+
+// closed reports whether light in the wafer could never end.
+func (m *model) closed() bool {
+	return m.depth[m.front] == 0 && m.faces[m.front].side[sideIn].closed() && m.faces[m.rear].side[sideIn].closed()
 }
 
 // coverName is the name of a cover in errors.

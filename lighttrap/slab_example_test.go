@@ -1,0 +1,41 @@
+package lighttrap_test
+
+import (
+	"fmt"
+
+	"photonledger/lighttrap"
+)
+
+// Where light of 1100 nm goes in a silicon wafer with Lambertian faces and a
+// good rear mirror.
+func ExampleSlab_Lambertian() {
+	const n = 3.54
+	_, inside := lighttrap.DiffuseReflectance(n)
+	b, err := lighttrap.Slab{
+		Absorption: 3.5, Thickness: 160e3, FrontReflectance: 0.02, FrontInternal: inside, RearReflectance: 0.95,
+	}.Lambertian()
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	fmt.Printf("absorbed %.3f, escaped %.3f, rear loss %.3f, reflected %.3f, path factor %.1f\n", b.Absorbed, b.Escaped, b.RearLoss, b.Reflected, b.PathFactor)
+	fmt.Printf("limit of the path factor %.1f\n", lighttrap.PathLimit(n))
+	// Output:
+	// absorbed 0.669, escaped 0.149, rear loss 0.162, reflected 0.020, path factor 20.5
+	// limit of the path factor 50.1
+}
+
+// The light that a grid of fingers and busbars takes in a module.
+func ExampleGrid_Shares() {
+	s, err := lighttrap.Grid{
+		FingerWidth: 35e3, FingerPitch: 1.4e6, FingerFactor: 0.6, // 35 µm every 1.4 mm
+		BusbarWidth: 0.8e6, BusbarPitch: 32e6, BusbarFactor: 1,
+	}.Shares()
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	fmt.Printf("covered %.4f, shaded %.4f, recovered %.4f\n", s.Covered, s.Shaded, s.Recovered)
+	// Output:
+	// covered 0.0494, shaded 0.0396, recovered 0.0098
+}
