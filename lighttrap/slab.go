@@ -47,7 +47,7 @@ func (s Slab) check() error {
 			return err
 		}
 	}
-	if x := s.opticalThickness(); math.IsInf(x, 1) {
+	if x := s.opticalThickness(); !(x <= math.MaxFloat64) {
 		return fmt.Errorf("lighttrap: slab: %g /cm and %g /cm in %g nm are not a finite optical thickness: %w", s.Absorption, s.FreeCarriers, s.Thickness, ErrInput)
 	}
 	for _, v := range []struct {

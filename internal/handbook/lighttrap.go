@@ -19,6 +19,9 @@ func lighttrapQuantity(row check.Row) (float64, error) {
 	case "diffuse_transmittance":
 		t, _ := lighttrap.DiffuseTransmittance(x)
 		return t, nil
+	case "diffuse_loss":
+		_, loss := lighttrap.DiffuseTransmittance(x)
+		return loss, nil
 	case "lambertian_absorptance":
 		slab.Absorption = x / (slab.Thickness * cmPerNM)
 		b, err := slab.Lambertian()
