@@ -5,8 +5,9 @@
 package pilot
 
 import (
-	"fmt"
 	"math"
+	"math/cmplx"
+	"slices"
 
 	"photonledger/lighttrap"
 	"photonledger/nk"
@@ -87,57 +88,69 @@ func (m *Media) RearFilms(i int) []optics.Film {
 
 // Wafer returns a wafer of the line at wavelength number i: nitride on the given
 // texture in front, oxide and aluminium on a planar rear. Thicknesses are in nm.
-func (m *Media) Wafer(i int, texture lighttrap.Texture, thickness, nitride float64) (lighttrap.Wafer, error) {
-	front, err := m.facet(i, m.FrontFilms(i, nitride), 1, false)
-	if err != nil {
-		return lighttrap.Wafer{}, err
-	}
-	rear, err := m.facet(i, m.RearFilms(i), m.Aluminium[i], true)
-	if err != nil {
-		return lighttrap.Wafer{}, err
-	}
-	w := lighttrap.Wafer{
+func (m *Media) Wafer(i int, texture lighttrap.Texture, thickness, nitride float64) (w lighttrap.Wafer, err error) {
+	w = lighttrap.Wafer{
 		Index: real(m.Silicon[i]), Absorption: m.BandToBand[i], FreeCarriers: m.FreeCarriers[i], Thickness: thickness,
-		Front: lighttrap.Face{Texture: texture, Films: &front},
-		Rear:  lighttrap.Face{Films: &rear, Opaque: true},
+		Front: lighttrap.Face{Texture: texture, Films: &lighttrap.FacetTable{}},
+		Rear:  lighttrap.Face{Films: &lighttrap.FacetTable{}, Opaque: true},
 	}
 	if texture != lighttrap.Planar {
 		w.Front.Angle = lighttrap.PyramidAngle
 	}
-	return w, nil
-}
-
-// facet fills the table of a facet whose films are listed from outside.
-func (m *Media) facet(i int, films []optics.Film, outside complex128, opaque bool) (lighttrap.FacetTable, error) {
-	const intervals = 32
-	n := complex(real(m.Silicon[i]), 0)
+	n := complex(w.Index, 0)
+	front, rear := m.FrontFilms(i, nitride), m.RearFilms(i)
 	// From outside the full index counts: in the ultraviolet k makes half of the
 	// reflectance. Light from inside the wafer exists only where k is small.
-	fromOutside := optics.Stack{Front: outside, Films: films, Back: m.Silicon[i]}
-	fromWafer := optics.Stack{Front: n, Back: outside}
-	for j := len(films) - 1; j >= 0; j-- {
-		fromWafer.Films = append(fromWafer.Films, films[j])
+	if w.Front.Films.Outside, err = m.side(i, optics.Stack{Front: 1, Films: front, Back: m.Silicon[i]}, w.Index, false); err != nil {
+		return w, err
+	}
+	if w.Front.Films.Inside, err = m.side(i, optics.Stack{Front: n, Films: front, Back: 1}, 1, true); err != nil {
+		return w, err
+	}
+	if w.Rear.Films.Inside, err = m.side(i, optics.Stack{Front: n, Films: rear, Back: m.Aluminium[i]}, real(m.Oxide[i]), true); err != nil {
+		return w, err
+	}
+	w.Rear.Films.Outside, err = lighttrap.TabulateFacet([]float64{0, 1}, func(float64) (lighttrap.FacetPoint, error) {
+		// No light comes out of the metal.
+		return lighttrap.FacetPoint{RS: 1, RP: 1, AS: make([]float64, len(rear)), AP: make([]float64, len(rear))}, nil
+	})
+	return w, err
+}
+
+// side fills one side of a facet table. The films of the stack are listed from
+// outside; reversed says that the light comes from the wafer. The angles are dense
+// around the critical angle against the index beyond.
+func (m *Media) side(i int, stack optics.Stack, beyond float64, reversed bool) (lighttrap.FacetSide, error) {
+	const intervals = 32
+	if reversed {
+		stack.Films = slices.Clone(stack.Films)
+		slices.Reverse(stack.Films)
 	}
 	var solver optics.Solver
-	var rs, rp optics.Response
-	return lighttrap.FillFacet(real(outside), real(n), intervals, opaque, func(inside bool, cos float64) (s, p lighttrap.FacetResponse, err error) {
-		stack := fromOutside
-		if inside {
-			stack = fromWafer
-		}
+	last := 0.0 // phases follow each other without jumps of 2π
+	return lighttrap.TabulateFacet(lighttrap.FacetCosines(real(stack.Front), beyond, intervals), func(cos float64) (p lighttrap.FacetPoint, err error) {
 		w := optics.Wave{Wavelength: m.Wavelength[i], Angle: math.Acos(cos), Polarization: optics.S}
-		if err = solver.Solve(&rs, stack, w); err == nil {
-			w.Polarization = optics.P
-			err = solver.Solve(&rp, stack, w)
+		var s, pp optics.Response
+		if err = solver.Solve(&s, stack, w); err != nil {
+			return p, err
 		}
-		a, err2 := solver.Amplitudes(stack, w)
-		if err == nil {
-			err = err2
+		w.Polarization = optics.P
+		if err = solver.Solve(&pp, stack, w); err != nil {
+			return p, err
 		}
+		a, err := solver.Amplitudes(stack, w)
 		if err != nil {
-			return s, p, fmt.Errorf("%g nm: %w", w.Wavelength, err)
+			return p, err
 		}
-		return lighttrap.FacetResponse{R: rs.R, T: rs.T, A: rs.A, Reflected: a.RS, Transmitted: a.TS},
-			lighttrap.FacetResponse{R: rp.R, T: rp.T, A: rp.A, Reflected: a.RP, Transmitted: a.TP}, nil
+		p = lighttrap.FacetPoint{RS: s.R, RP: pp.R, TS: s.T, TP: pp.T, AS: s.A, AP: pp.A}
+		p.Phase = cmplx.Phase(a.RS * cmplx.Conj(a.RP))
+		p.Phase -= 2 * math.Pi * math.Round((p.Phase-last)/(2*math.Pi))
+		p.TransmittedPhase = cmplx.Phase(a.TS * cmplx.Conj(a.TP))
+		last = p.Phase
+		if reversed {
+			slices.Reverse(p.AS)
+			slices.Reverse(p.AP)
+		}
+		return p, nil
 	})
 }
