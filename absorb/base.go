@@ -44,8 +44,11 @@ func (b Base) check() error {
 			return err
 		}
 	}
-	if w, s := b.shape(); !(w > 1e-150 && w < 1e150 && s < 1e150) {
-		return fmt.Errorf("W/L = %g or SL/D = %g is out of proportion: %w", w, s, ErrInput)
+	w, s := b.shape()
+	for _, v := range [...]float64{b.Thickness, b.DiffusionLength, w} {
+		if !(v > 1/reach && v < reach) || !(s < reach) {
+			return fmt.Errorf("thickness %g nm, diffusion length %g nm or SL/D = %g is out of proportion: %w", b.Thickness, b.DiffusionLength, s, ErrInput)
+		}
 	}
 	return nil
 }
@@ -90,21 +93,20 @@ func (b Base) Mean(z1, z2 float64) float64 {
 	if b.check() != nil || !(z1 >= 0 && z1 < z2 && inside(z2, b.Thickness)) {
 		return math.NaN()
 	}
-	return b.integral(z1, z2) / (z2 - z1)
+	return b.mean(z1, z2)
 }
 
-// integral returns the integral of φ from x1 to x2.
+// mean returns the mean of φ from x1 to x2.
 //
 // derived: about x2, φ is A cosh + B sinh of the distance over L, with A and B
 // not negative; exponentials taken out.
-func (b Base) integral(x1, x2 float64) float64 {
+func (b Base) mean(x1, x2 float64) float64 {
 	w, s := b.shape()
 	l := b.DiffusionLength
 	y := (x2 - x1) / l
 	norm, _ := scaled(w, s)
 	even, odd := scaled(max(b.Thickness-x2, 0)/l, s)
-	half := -math.Expm1(-y)
-	return l * math.Exp(-x1/l) * 0.5 * (even*-math.Expm1(-2*y) + odd*half*half) / norm
+	return math.Exp(-x1/l) * (even*meanExp(2*y) - odd*0.5*math.Expm1(-y)*meanExp(y)) / norm
 }
 
 // Collected returns the share of the incident photons that is collected from a
@@ -122,14 +124,14 @@ func (b Base) Collected(p Profile) (float64, error) {
 // which is 0/0 for aL = 1 and loses its digits about there and for weak
 // absorption; it is computed in a form that does neither.
 //
-// Special cases: NaN if alpha is negative, NaN or infinite, and for a base that
-// does not validate.
+// Special cases: NaN if alpha is negative or NaN or aW is above 1e100, and for a
+// base that does not validate.
 func (b Base) IQE(alpha float64) float64 {
-	if b.check() != nil || !amount(alpha) {
+	x := OpticalDepth(alpha, b.Thickness)
+	if b.check() != nil || !(x < reach) {
 		return math.NaN()
 	}
-	decay := alpha * cmPerNM
-	return decay * b.beamDown(decay*b.Thickness)
+	return alpha * cmPerNM * b.beamDown(x)
 }
 
 // beamDown returns the integral of exp(-a x) φ(x) over the base, x = aW.
@@ -219,7 +221,7 @@ func (b Base) CollectionLength() float64 {
 	if b.check() != nil {
 		return math.NaN()
 	}
-	return b.integral(0, b.Thickness)
+	return b.Thickness * b.mean(0, b.Thickness)
 }
 
 // RearCollection returns φ(W) = 1/(cosh w + s sinh w), the collection probability

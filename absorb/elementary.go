@@ -114,7 +114,11 @@ func dividedExp3(a, b, c float64) float64 {
 		power *= y
 		h = x*h + power
 		factorial *= k + 2
-		sum += h / factorial
+		term := h / factorial
+		sum += term
+		if term < 0x1p-60 {
+			break
+		}
 	}
 	return math.Exp(a) * sum
 }

@@ -17,6 +17,10 @@ var (
 // made by repeated addition need not end on the last bit.
 const roundingOfDepth = 1e-12
 
+// reach bounds lengths in nm and ratios of lengths where products of three of them
+// must not overflow.
+const reach = 1e100
+
 // checkMesh accepts two or more cell boundaries, not negative and in strictly
 // ascending order.
 func checkMesh(name string, mesh []float64) error {

@@ -77,7 +77,8 @@ func (j Junction) Mean(z1, z2 float64) float64 {
 	sum := j.FrontCollection * overlap(z1, z2, 0, front)
 	sum += overlap(z1, z2, front, base)
 	if z2 > base {
-		sum += j.Base.integral(max(z1-base, 0), z2-base)
+		x1, x2 := max(z1-base, 0), z2-base
+		sum += (x2 - x1) * j.Base.mean(x1, x2)
 	}
 	return sum / (z2 - z1)
 }

@@ -3,6 +3,7 @@ package absorb
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"gonum.org/v1/gonum/stat"
 )
@@ -54,48 +55,23 @@ func FitLength(alpha, iqe []float64, s LengthSettings) (LengthFit, error) {
 	if len(x) <= fitted {
 		return LengthFit{}, fmt.Errorf("absorb: effective length: %d points in the range, want %d or more: %w", len(x), fitted+1, ErrFit)
 	}
-	f := LengthFit{Intercept: 1, Points: len(x), Shortest: x[0], Longest: x[0]}
-	for _, v := range x {
-		f.Shortest, f.Longest = min(f.Shortest, v), max(f.Longest, v)
+	l := regress(x, y, w, s.ThroughOne, len(x)-fitted)
+	if !(l.slope > 0) || math.IsInf(l.slope, 1) {
+		return LengthFit{}, fmt.Errorf("absorb: effective length: slope of 1/IQE over 1/alpha is %g /nm, want a positive one: %w", l.slope, ErrFit)
 	}
-	var slope float64
-	mean := 0.0
-	if s.ThroughOne {
-		for i := range y {
-			y[i]--
-		}
-		_, slope = stat.LinearRegression(x, y, w, true)
-		for i := range y {
-			y[i]++
-		}
-	} else {
-		mean = stat.Mean(x, w)
-		f.Intercept, slope = stat.LinearRegression(x, y, w, false)
-	}
-	if !(slope > 0) || math.IsInf(slope, 1) {
-		return LengthFit{}, fmt.Errorf("absorb: effective length: slope of 1/IQE over 1/alpha is %g /nm, want a positive one: %w", slope, ErrFit)
-	}
-	var weights, spread, scatter float64
-	for i := range x {
-		weight := 1.0
-		if w != nil {
-			weight = w[i]
-		}
-		r := y[i] - f.Intercept - slope*x[i]
-		weights += weight
-		spread += weight * (x[i] - mean) * (x[i] - mean)
-		scatter += weight * r * r
-	}
-	variance := scatter / float64(len(x)-fitted)
 	cos := s.Cos
 	if cos == 0 {
 		cos = 1
 	}
-	f.Length = cos / slope
-	f.LengthError = f.Length / slope * math.Sqrt(variance/spread)
-	if !s.ThroughOne {
-		f.InterceptError = math.Sqrt(variance * (1/weights + mean*mean/spread))
+	f := LengthFit{
+		Length:         cos / l.slope,
+		Intercept:      1 + l.intercept,
+		InterceptError: l.interceptError,
+		Shortest:       slices.Min(x),
+		Longest:        slices.Max(x),
+		Points:         len(x),
 	}
+	f.LengthError = f.Length / l.slope * l.slopeError
 	for _, v := range [...]float64{f.Length, f.LengthError, f.Intercept, f.InterceptError} {
 		if !finite(v) {
 			return LengthFit{}, fmt.Errorf("absorb: effective length: the points do not determine a line: %w", ErrFit)
@@ -104,7 +80,39 @@ func FitLength(alpha, iqe []float64, s LengthSettings) (LengthFit, error) {
 	return f, nil
 }
 
-// inverse returns penetration depth, 1/IQE and weight of the points in the range;
+// line is a fitted straight line with its standard errors.
+type line struct{ intercept, slope, interceptError, slopeError float64 }
+
+// regress fits a line, through the origin if asked, with standard errors from the
+// scatter of the points with the given degrees of freedom (textbook formulas of
+// weighted least squares).
+func regress(x, y, w []float64, origin bool, freedom int) line {
+	var l line
+	l.intercept, l.slope = stat.LinearRegression(x, y, w, origin)
+	mean := 0.0
+	if !origin {
+		mean = stat.Mean(x, w)
+	}
+	var weights, spread, scatter float64
+	for i := range x {
+		weight := 1.0
+		if w != nil {
+			weight = w[i]
+		}
+		r := y[i] - l.intercept - l.slope*x[i]
+		weights += weight
+		spread += weight * (x[i] - mean) * (x[i] - mean)
+		scatter += weight * r * r
+	}
+	variance := scatter / float64(freedom)
+	l.slopeError = math.Sqrt(variance / spread)
+	if !origin {
+		l.interceptError = math.Sqrt(variance * (1/weights + mean*mean/spread))
+	}
+	return l
+}
+
+// inverse returns penetration depth, 1/IQE - 1 and weight of the points in the range;
 // points of weight 0 are left out.
 func inverse(alpha, iqe []float64, s LengthSettings) (x, y, w []float64, err error) {
 	switch {
@@ -131,7 +139,7 @@ func inverse(alpha, iqe []float64, s LengthSettings) (x, y, w []float64, err err
 		if depth < s.Shortest || s.Longest != 0 && depth > s.Longest || s.Weight != nil && s.Weight[i] == 0 {
 			continue
 		}
-		x, y = append(x, depth), append(y, 1/iqe[i])
+		x, y = append(x, depth), append(y, 1/iqe[i]-1)
 		if s.Weight != nil {
 			w = append(w, s.Weight[i])
 		}

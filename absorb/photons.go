@@ -61,8 +61,14 @@ func CollectedCurrent(mesh, rate []float64, c Collection) (float64, error) {
 		return 0, fmt.Errorf("absorb: current: %w", err)
 	}
 	sum := 0.0
+	table, isTable := c.(Table)
 	for i, g := range rate {
-		mean := c.Mean(mesh[i], mesh[i+1])
+		var mean float64
+		if isTable { // checked once is enough
+			mean = table.mean(mesh[i], mesh[i+1])
+		} else {
+			mean = c.Mean(mesh[i], mesh[i+1])
+		}
 		if math.IsNaN(mean) {
 			return 0, fmt.Errorf("absorb: current: cell %d, %g nm to %g nm, has no collection probability: %w", i, mesh[i], mesh[i+1], ErrRange)
 		}

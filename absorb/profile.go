@@ -30,6 +30,10 @@ type Profile struct {
 // excess is how far rounding may take the absorptance of a film above 1.
 const excess = 1e-9
 
+// longestPhase bounds Wavenumber times Thickness where there is interference: up to
+// it sines keep their last digits. It is about a metre of glass.
+const longestPhase = 1e8
+
 // Validate returns nil for a profile that a film can have. Otherwise the error
 // names the field and wraps [ErrInput]. An absorptance above 1 is such an error:
 // it is what coefficients in 1/cm instead of 1/nm lead to.
@@ -54,6 +58,12 @@ func (p *Profile) check() error {
 		return checkAmount("backward density", " /nm", p.Backward)
 	case !finite(p.Cos), !finite(p.Sin):
 		return fmt.Errorf("interference %g, %g /nm is not finite: %w", p.Cos, p.Sin, ErrInput)
+	}
+	if x := p.Decay * p.Thickness; !(x < reach) {
+		return fmt.Errorf("optical thickness %g is out of proportion: %w", x, ErrInput)
+	}
+	if phase := p.Wavenumber * p.Thickness; !(phase <= longestPhase) && (p.Cos != 0 || p.Sin != 0) {
+		return fmt.Errorf("interference over a phase of %g is not resolved: %w", phase, ErrInput)
 	}
 	if a := p.integral(0, p.Thickness); !(math.Abs(a) <= 1+excess) {
 		return fmt.Errorf("absorptance %g is above 1: %w", a, ErrInput)

@@ -42,8 +42,8 @@ func (s Slab) check() error {
 			return err
 		}
 	}
-	if x := (s.Absorption + s.FreeCarriers) * cmPerNM * s.Thickness; math.IsInf(x, 1) {
-		return fmt.Errorf("optical thickness overflows: %w", ErrInput)
+	if x := (s.Absorption + s.FreeCarriers) * cmPerNM * s.Thickness; !(x < reach) {
+		return fmt.Errorf("optical thickness %g is out of proportion: %w", x, ErrInput)
 	} else if s.FrontInternal == 1 && s.RearReflectance == 1 && s.FrontReflectance < 1 && x < smallestTrapped {
 		return fmt.Errorf("no absorption and no way out for the light that enters: %w", ErrInput)
 	}

@@ -68,7 +68,15 @@ func (t Table) at(i int, z float64) float64 {
 // Special case: NaN unless 0 <= z1 < z2 <= last depth, and for a table that does
 // not validate.
 func (t Table) Mean(z1, z2 float64) float64 {
-	if t.check() != nil || !(z1 >= 0 && z1 < z2 && inside(z2, t.Depth[len(t.Depth)-1])) {
+	if t.check() != nil {
+		return math.NaN()
+	}
+	return t.mean(z1, z2)
+}
+
+// mean is Mean of a table that validates.
+func (t Table) mean(z1, z2 float64) float64 {
+	if !(z1 >= 0 && z1 < z2 && inside(z2, t.Depth[len(t.Depth)-1])) {
 		return math.NaN()
 	}
 	sum := 0.0
@@ -113,17 +121,19 @@ func (t Table) Collected(p Profile) (float64, error) {
 // linear integrates the density times a straight line that is v1 at z1 and v2 at
 // z2.
 //
-// derived: over t = 0..1 the integrals of (1-t) exp(-qt) and t exp(-qt) are the
-// divided differences exp[-q, 0, 0] and exp[-q, -q, 0]; about the middle of the
-// piece those of the oscillation are sinc and the spherical Bessel function j1.
+// derived: over t = 0..1 the integral of t exp(-qt) is the divided difference
+// exp[-q, -q, 0], that of (1-t) exp(-qt) what it leaves of the mean; about the
+// middle of the piece those of the oscillation are sinc and the spherical Bessel
+// function j1.
 func (p *Profile) linear(z1, z2, v1, v2 float64) float64 {
 	h := z2 - z1
 	sum := 0.0
 	if p.Forward != 0 || p.Backward != 0 {
 		q := p.Decay * h
-		near, far := dividedExp3(-q, 0, 0), dividedExp3(-q, -q, 0)
-		down, up := p.Forward*math.Exp(-p.Decay*z1), p.Backward*math.Exp(-p.Decay*(p.Thickness-z2))
-		sum = h * (down*(v1*near+v2*far) + up*(v2*near+v1*far))
+		far := dividedExp3(-q, -q, 0)
+		near := meanExp(q) - far // at least half of the mean
+		down, up := h*p.Forward*math.Exp(-p.Decay*z1), h*p.Backward*math.Exp(-p.Decay*(p.Thickness-z2))
+		sum = down*(v1*near+v2*far) + up*(v2*near+v1*far)
 	}
 	if p.Cos == 0 && p.Sin == 0 {
 		return sum
