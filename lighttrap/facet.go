@@ -87,8 +87,7 @@ func RefractedCosine(n1, n2, cos float64) float64 {
 	if !(n1 > 0 && n2 > 0 && cos >= 0 && cos <= 1) {
 		return math.NaN()
 	}
-	m := n1 / n2
-	return math.Sqrt(1 - m*m*(1-cos)*(1+cos))
+	return math.Sqrt(refracted(n1/n2, cos))
 }
 
 // check reports the first value of a table that is out of its range.

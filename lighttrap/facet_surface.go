@@ -49,15 +49,10 @@ type opticSide struct {
 // derived: from rs = (n1 c1 - n2 c2)/(n1 c1 + n2 c2), rp = (n2 c1 - n1 c2)/(n2 c1 + n1 c2),
 // rp = -rs at normal incidence, with c2 = i g beyond the critical angle.
 func fresnel(v *response, n1, n2, c1 float64) (c2 float64) {
-	m := n1 / n2
-	c2sq := 1 - m*m*(1-c1)*(1+c1)
+	c2sq := refracted(n1/n2, c1)
 	if c2sq > 0 {
 		c2 = math.Sqrt(c2sq)
-		a, b, e, f := n1*c1, n2*c2, n2*c1, n1*c2
-		s, p := 1/(a+b), 1/(e+f)
-		rs, rp := (a-b)*s, (e-f)*p
-		t := 4 * a * b
-		*v = response{rs * rs, rp * rp, rs * rp, 0, t * s * s, t * p * p, t * s * p, 0}
+		fresnelPassing(v, n1, n2, c1, c2)
 		return c2
 	}
 	g := math.Sqrt(-c2sq)
@@ -70,6 +65,19 @@ func fresnel(v *response, n1, n2, c1 float64) (c2 float64) {
 	}
 	return 0
 }
+
+// fresnelPassing is fresnel with both cosines known.
+func fresnelPassing(v *response, n1, n2, c1, c2 float64) {
+	a, b, e, f := n1*c1, n2*c2, n2*c1, n1*c2
+	s, p := 1/(a+b), 1/(e+f)
+	rs, rp := (a-b)*s, (e-f)*p
+	t := 4 * a * b
+	*v = response{rs * rs, rp * rp, rs * rp, 0, t * s * s, t * p * p, t * s * p, 0}
+}
+
+// refracted returns the square of the cosine behind an interface, 1 - m² sin²θ
+// with m = n1/n2, in a form that does not cancel towards grazing light.
+func refracted(m, c float64) float64 { return (1-m)*(1+m) + m*m*c*c }
 
 // compile makes the side of an interface from a table, which may be nil.
 func (o *opticSide) compile(s *FacetSide, n1, n2 float64, opaque bool) {
@@ -150,9 +158,7 @@ func (o *opticSide) at(v *response, c float64) (c2 float64, row []float64, weigh
 	if o.opaque {
 		return 0, row, u
 	}
-	m := o.n1 / o.n2
-	c2sq := 1 - m*m*(1-c)*(1+c)
-	if c2sq > 0 {
+	if c2sq := refracted(o.n1/o.n2, c); c2sq > 0 {
 		return math.Sqrt(c2sq), row, u
 	}
 	// Between the last angle of the table before the critical one and that itself

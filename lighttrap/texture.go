@@ -129,8 +129,8 @@ func (f *Face) check(name string) error {
 	if math.IsNaN(f.Azimuth) || math.IsInf(f.Azimuth, 0) {
 		return fmt.Errorf("lighttrap: %s: azimuth %g rad is not finite: %w", name, f.Azimuth, ErrInput)
 	}
-	if err := checkAmount(name+": period", " nm", f.Period); err != nil {
-		return err
+	if !(f.Period >= 0) || math.IsInf(f.Period, 1) {
+		return checkAmount(name+": period", " nm", f.Period)
 	}
 	if f.Texture == CosinePower {
 		if !(f.Exponent > 0) || math.IsInf(f.Exponent, 1) {
@@ -139,8 +139,8 @@ func (f *Face) check(name string) error {
 	} else if f.Exponent != 0 {
 		return fmt.Errorf("lighttrap: %s: exponent %g on a face that is %s: %w", name, f.Exponent, f.Texture, ErrInput)
 	}
-	if err := checkShare(name+": specular share", f.Specular); err != nil {
-		return err
+	if !(f.Specular >= 0 && f.Specular <= 1) {
+		return checkShare(name+": specular share", f.Specular)
 	}
 	if f.Specular != 0 && !f.Texture.scatters() {
 		return fmt.Errorf("lighttrap: %s: specular share %g on a face that is %s: %w", name, f.Specular, f.Texture, ErrInput)
@@ -148,7 +148,10 @@ func (f *Face) check(name string) error {
 	if f.Opaque && f.Films == nil {
 		return fmt.Errorf("lighttrap: %s: an opaque medium needs a table of the reflectance: %w", name, ErrInput)
 	}
-	return checkIndex(name+": index of the medium outside", f.medium())
+	if n := f.medium(); !(n > 0) || math.IsInf(n, 1) {
+		return checkIndex(name+": index of the medium outside", n)
+	}
+	return nil
 }
 
 func (w *Wafer) check() error {
@@ -170,19 +173,25 @@ func (w *Wafer) check() error {
 		return err
 	}
 	for i, c := range w.Covers {
-		name := fmt.Sprintf("cover %d: ", i)
-		if err := checkIndex(name+"index", c.Index); err != nil {
-			return err
-		}
-		if err := checkAmount(name+"absorption coefficient", " /cm", c.Absorption); err != nil {
-			return err
-		}
-		if err := checkAmount(name+"thickness", " nm", c.Thickness); err != nil {
-			return err
+		if err := c.check(); err != nil {
+			return fmt.Errorf("lighttrap: cover %d: %w", i, err)
 		}
 	}
 	if len(w.Covers) > 0 && w.Front.Opaque {
 		return fmt.Errorf("lighttrap: front: covers over an opaque medium: %w", ErrInput)
+	}
+	return nil
+}
+
+func (c *Cover) check() error {
+	if !(c.Index > 0) || math.IsInf(c.Index, 1) {
+		return fmt.Errorf("index %g is not positive and finite: %w", c.Index, ErrInput)
+	}
+	if !(c.Absorption >= 0) || math.IsInf(c.Absorption, 1) {
+		return fmt.Errorf("absorption coefficient %g /cm is negative or not finite: %w", c.Absorption, ErrInput)
+	}
+	if !(c.Thickness >= 0) || math.IsInf(c.Thickness, 1) {
+		return fmt.Errorf("thickness %g nm is negative or not finite: %w", c.Thickness, ErrInput)
 	}
 	return nil
 }

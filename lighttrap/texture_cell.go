@@ -85,7 +85,7 @@ func (w *worker) leaveCell(f *surface, r *ray) {
 	}
 }
 
-// cell takes a ray to the next facet, lets it meet it, or takes it out of the
+// cell takes a ray to the next facet and lets it meet it, or takes it out of the
 // texture.
 func (w *worker) cell(f *surface, r *ray) bool {
 	var j int
@@ -118,11 +118,7 @@ func (w *worker) cell(f *surface, r *ray) bool {
 	k := &w.contact
 	w.touch(k, &f.side[side], w.m.films[r.face], r, n)
 	wr, wt := w.divide(k, r)
-	part := r
-	if wr > 0 || r.first {
-		w.spare = *r
-		part = &w.spare
-	}
+	part := w.split(r, wr)
 	if wt > 0 {
 		part.w = wt
 		if w.through(k, part, side) {
@@ -131,7 +127,7 @@ func (w *worker) cell(f *surface, r *ray) bool {
 			if part == r {
 				return true
 			}
-			w.push(part)
+			w.pending++
 		}
 	}
 	if part == r {
@@ -145,31 +141,39 @@ func (w *worker) cell(f *surface, r *ray) bool {
 // within moves a ray on the side of the pyramids to the next facet and returns
 // its number. The pyramid is convex: its facets and its base bound the way.
 func (f *surface) within(r *ray) int {
-	best, hit := math.Inf(1), nowhere
+	const far = math.MaxFloat64
 	d, p := r.d, r.p
-	facets := 4
-	if f.grooves {
-		facets = 2
+	rise := f.height - p.z
+	best, hit := far, nowhere
+	if d.z < 0 {
+		best, hit = max(0, -p.z/d.z), pastFacets
 	}
+	// Facet 0 is the plane z + tan x = height, facet 1 its mirror image.
 	across, at := f.tan*d.x, f.tan*p.x
-	for j := 0; j < facets; j++ {
-		if j == 2 {
-			across, at = f.tan*d.y, f.tan*p.y
+	if g := d.z + across; g > 0 && r.on != 0 {
+		if l := rise - at; l < best*g {
+			best, hit = l/g, 0
 		}
-		// Facet j is the plane z + tan (±x) = height.
-		if g := d.z + across; g > 0 && j != r.on {
-			if l := max(0, (f.height-p.z-at)/g); l < best {
-				best, hit = l, j
+	}
+	if g := d.z - across; g > 0 && r.on != 1 {
+		if l := rise + at; l < best*g {
+			best, hit = l/g, 1
+		}
+	}
+	if !f.grooves {
+		across, at = f.tan*d.y, f.tan*p.y
+		if g := d.z + across; g > 0 && r.on != 2 {
+			if l := rise - at; l < best*g {
+				best, hit = l/g, 2
 			}
 		}
-		across, at = -across, -at
-	}
-	if d.z < 0 {
-		if l := max(0, -p.z/d.z); l < best {
-			best, hit = l, pastFacets
+		if g := d.z - across; g > 0 && r.on != 3 {
+			if l := rise + at; l < best*g {
+				best, hit = l/g, 3
+			}
 		}
 	}
-	if hit != nowhere {
+	if hit != nowhere && best > 0 { // rounding may have put the ray behind a plane
 		r.p = p.along(best, d)
 	}
 	return hit

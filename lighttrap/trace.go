@@ -85,7 +85,6 @@ type worker struct {
 	pending  int
 	budget   int
 	contact  contact
-	spare    ray
 	plan     []planeStep
 	hits     int64
 }
@@ -112,21 +111,12 @@ func (t *Tracer) Trace(dst *Result, w Wafer, l Light, s Settings) error {
 	for i := range workers {
 		t.workers[i].m, t.workers[i].hits = m, 0
 	}
-	row := func(i int) []float64 { return t.rows[i*m.sums : (i+1)*m.sums] }
 	if workers == 1 {
 		for i := range repetitions {
-			t.workers[0].repeat(row(i), &l, rays, s.Seed, i)
+			t.workers[0].repeat(t.row(i), &l, rays, s.Seed, i)
 		}
 	} else {
-		var wait sync.WaitGroup
-		for k := range workers {
-			wait.Go(func() {
-				for i := k; i < repetitions; i += workers {
-					t.workers[k].repeat(row(i), &l, rays, s.Seed, i)
-				}
-			})
-		}
-		wait.Wait()
+		t.share(l, rays, repetitions, workers, s.Seed)
 	}
 	t.report(dst, &w, repetitions)
 	dst.Rays = rays * repetitions
@@ -135,6 +125,22 @@ func (t *Tracer) Trace(dst *Result, w Wafer, l Light, s Settings) error {
 		dst.Facets += t.workers[i].hits
 	}
 	return nil
+}
+
+// row is the row of sums of a repetition.
+func (t *Tracer) row(i int) []float64 { return t.rows[i*t.model.sums : (i+1)*t.model.sums] }
+
+// share lets several goroutines trace the repetitions.
+func (t *Tracer) share(l Light, rays, repetitions, workers int, seed uint64) {
+	var wait sync.WaitGroup
+	for k := range workers {
+		wait.Go(func() {
+			for i := k; i < repetitions; i += workers {
+				t.workers[k].repeat(t.row(i), &l, rays, seed, i)
+			}
+		})
+	}
+	wait.Wait()
 }
 
 // plan fills in the defaults.

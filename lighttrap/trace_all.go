@@ -54,16 +54,7 @@ func (b *Batch) TraceAll(dst []Result, wafers []Wafer, l Light, s Settings) ([]R
 			b.one(&b.tracers[0], dst, wafers, l, s, i)
 		}
 	} else {
-		var wait sync.WaitGroup
-		var taken atomic.Int64
-		for k := range workers {
-			wait.Go(func() {
-				for i := int(taken.Add(1)) - 1; i < len(wafers); i = int(taken.Add(1)) - 1 {
-					b.one(&b.tracers[k], dst, wafers, l, s, i)
-				}
-			})
-		}
-		wait.Wait()
+		b.share(dst, wafers, l, s, workers)
 	}
 	for i, err := range b.errs[:len(wafers)] {
 		if err != nil {
@@ -71,6 +62,20 @@ func (b *Batch) TraceAll(dst []Result, wafers []Wafer, l Light, s Settings) ([]R
 		}
 	}
 	return dst, nil
+}
+
+// share lets several goroutines take one wafer after the other.
+func (b *Batch) share(dst []Result, wafers []Wafer, l Light, s Settings, workers int) {
+	var wait sync.WaitGroup
+	var taken atomic.Int64
+	for k := range workers {
+		wait.Go(func() {
+			for i := int(taken.Add(1)) - 1; i < len(wafers); i = int(taken.Add(1)) - 1 {
+				b.one(&b.tracers[k], dst, wafers, l, s, i)
+			}
+		})
+	}
+	wait.Wait()
 }
 
 // one traces wafer i.

@@ -70,6 +70,7 @@ func (m *model) compile(w *Wafer, l *Light, depths []float64) error {
 	if l.FromRear {
 		m.lit = m.rear
 	}
+	m.faces = m.faces[:cap(m.faces)] // keeps the memory of all interfaces
 	for len(m.faces) < n+2 {
 		m.faces = append(m.faces, surface{})
 	}

@@ -12,6 +12,7 @@ type planeStep struct {
 	tau, loss  float64 // transmittance of one pass, and 1 minus it
 	rho, lack  float64 // reflectance of this interface and all behind it, and 1 minus it
 	gain       float64 // flux that starts in the layer for one that meets the interface
+	trapped    float64 // share of it that enters the layer and can go nowhere
 	towards    float64 // flux that meets the interface from the lit side
 	behind     float64 // reflectance of all up to this interface, seen from its layer
 	r, t, a    float64 // of one polarisation, from the lit side
@@ -83,13 +84,20 @@ func (w *worker) layOut(cos float64) {
 		face := &m.faces[s.number]
 		s.down.o, s.up.o = &face.side[side], &face.side[1-side]
 		_, s.down.row, s.down.weight = s.down.o.at(&s.down.v, c)
+		behind := math.Sqrt(max(0, refracted(first/s.down.o.n2, cos)))
+		bare := len(s.down.o.cos) == 0 && c > 0 && behind > 0
+		if bare {
+			// Near the critical angle rounding must not decide differently on both sides.
+			fresnelPassing(&s.down.v, s.down.o.n1, s.down.o.n2, c, behind)
+		}
 		if i == n-1 {
 			s.layer = -1
 			break
 		}
-		ratio := first / s.down.o.n2
-		c = math.Sqrt(max(0, 1-ratio*ratio*(1-cos)*(1+cos)))
-		_, s.up.row, s.up.weight = s.up.o.at(&s.up.v, c)
+		c = behind
+		if _, s.up.row, s.up.weight = s.up.o.at(&s.up.v, c); bare {
+			s.up.v = s.down.v
+		}
 		s.slope = 1 / max(c, minCos)
 		x := m.depth[s.layer] * s.slope
 		s.tau, s.loss = math.Exp(-x), -math.Expm1(-x)
@@ -113,8 +121,10 @@ func (w *worker) lights(share float64, black int, rho float64) {
 			tau2 := s.tau * s.tau
 			leak := s.loss*(1+s.tau) + tau2*next.lack // 1 - τ²ρ
 			den := (s.tu + s.au) + s.ru*leak
-			if den == 0 {
-				den = 1 // nothing enters, nothing leaves
+			if s.trapped = 0; den == 0 {
+				// Light that enters never leaves.
+				s.rho, s.lack, s.gain, s.trapped = s.r, s.t+s.a, 0, s.t
+				continue
 			}
 			s.gain = s.t / den
 			s.rho = s.r + s.gain*tau2*next.rho*s.tu
@@ -166,6 +176,7 @@ func (w *worker) planePolarized(p int, share float64) {
 			w.sum[sumTransmitted] += s.towards * s.t
 			break
 		}
+		w.sum[sumUnfinished] += s.towards * s.trapped
 		start := s.towards * s.gain
 		turned := start * s.tau * plan[i+1].rho
 		up := turned * s.tau

@@ -51,12 +51,17 @@ type contact struct {
 // absorb, and turns the axis of the polarisation into the s direction.
 func (w *worker) touch(k *contact, o *opticSide, films int, r *ray, n vec) {
 	c := -r.d.dot(n)
-	c = min(max(c, 0), 1)
+	if c < 0 {
+		c = 0
+	} else if c > 1 {
+		c = 1
+	}
 	s := r.d.cross(n)
 	if l2 := s.dot(s); l2 > 1e-24 {
-		s = s.scale(1 / math.Sqrt(l2))
-		cos, sin := s.dot(r.e), s.dot(r.d.cross(r.e))
-		// cos² + sin² = 1 but for rounding
+		f := 1 / math.Sqrt(l2)
+		s = s.scale(f)
+		// The sine is s·(d×e) = (d×n)·(d×e) f = n·e f, because d·e = 0.
+		cos, sin := s.dot(r.e), n.dot(r.e)*f
 		c2, s2 := (cos-sin)*(cos+sin), 2*cos*sin
 		r.q, r.u = r.q*c2+r.u*s2, r.u*c2-r.q*s2
 		r.e = s
@@ -65,11 +70,18 @@ func (w *worker) touch(k *contact, o *opticSide, films int, r *ray, n vec) {
 	c2, row, weight := o.at(&k.v, c)
 	k.c2 = c2
 	ps, pp := 0.5*(1+r.q), 0.5*(1-r.q)
-	k.r = max(0, k.v[colRS]*ps+k.v[colRP]*pp)
-	k.t = max(0, k.v[colTS]*ps+k.v[colTP]*pp)
+	if ps < 0 { // by rounding
+		ps, pp = 0, 1
+	} else if pp < 0 {
+		ps, pp = 1, 0
+	}
+	k.r = k.v[colRS]*ps + k.v[colRP]*pp
+	k.t = k.v[colTS]*ps + k.v[colTP]*pp
 	if o.films == 0 {
-		k.t = max(0, 1-k.r)
-		if k.v[colTS] == 0 && k.v[colTP] == 0 {
+		// Exactly all light goes on.
+		if k.t == 0 {
+			k.r = 1
+		} else if k.t = 1 - k.r; k.t < 0 {
 			k.r, k.t = 1, 0
 		}
 		return
@@ -79,7 +91,7 @@ func (w *worker) touch(k *contact, o *opticSide, films int, r *ray, n vec) {
 		i := columns + 2*j
 		as := row[i] + weight*(row[i+stride]-row[i])
 		ap := row[i+1] + weight*(row[i+1+stride]-row[i+1])
-		w.end(r, films+j, r.w*max(0, as*ps+ap*pp))
+		w.end(r, films+j, r.w*(as*ps+ap*pp))
 	}
 }
 
@@ -183,11 +195,16 @@ func (w *worker) divide(k *contact, r *ray) (reflected, transmitted float64) {
 	}
 }
 
-// push keeps a part for later. The stack cannot overflow: each part on it has
-// at least splitFirst of the light.
-func (w *worker) push(r *ray) {
-	w.stack[w.pending] = *r
-	w.pending++
+// split returns the ray that goes on behind a facet: the ray itself, or a copy
+// for later where the reflected light goes on too. The stack cannot overflow:
+// each part on it has at least splitFirst of the light.
+func (w *worker) split(r *ray, wr float64) *ray {
+	if wr == 0 && !r.first {
+		return r
+	}
+	part := &w.stack[w.pending]
+	*part = *r
+	return part
 }
 
 // plane lets a ray meet an interface without facets.
@@ -215,11 +232,7 @@ func (w *worker) plane(f *surface, r *ray) bool {
 		w.touch(k, o, w.m.films[r.face], r, n)
 	}
 	wr, wt := w.divide(k, r)
-	part := r
-	if wr > 0 || r.first {
-		w.spare = *r
-		part = &w.spare
-	}
+	part := w.split(r, wr)
 	if wt > 0 {
 		part.w = wt
 		if w.through(k, part, side) {
@@ -227,7 +240,7 @@ func (w *worker) plane(f *surface, r *ray) bool {
 			if part == r {
 				return true
 			}
-			w.push(part)
+			w.pending++
 		}
 	}
 	if part == r {
