@@ -15,6 +15,7 @@ import (
 // quantities maps the beginning of a file name to the function that computes its
 // rows.
 var quantities = map[string]func(check.Row) (float64, error){
+	"absorb":    absorbQuantity,
 	"nk":        nkQuantity,
 	"optics":    opticsQuantity,
 	"spectrum":  spectrumQuantity,
