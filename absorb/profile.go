@@ -36,7 +36,9 @@ const longestPhase = 1e8
 
 // Validate returns nil for a profile that a film can have. Otherwise the error
 // names the field and wraps [ErrInput]. An absorptance above 1 is such an error:
-// it is what coefficients in 1/cm instead of 1/nm lead to.
+// it is what coefficients in 1/cm instead of 1/nm lead to. So is interference over
+// a phase Wavenumber times Thickness above 1e8, and an optical thickness above
+// 1e100.
 func (p Profile) Validate() error {
 	if err := p.check(); err != nil {
 		return fmt.Errorf("absorb: profile: %w", err)
