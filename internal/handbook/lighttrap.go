@@ -1,7 +1,6 @@
 package handbook
 
 import (
-	"fmt"
 	"math"
 
 	"photonledger/internal/check"
@@ -45,5 +44,5 @@ func lighttrapQuantity(row check.Row) (float64, error) {
 		_, in := lighttrap.DiffuseReflectance(n)
 		return in, nil
 	}
-	return 0, fmt.Errorf("quantity %q is not known here", row.Quantity)
+	return textureQuantity(row)
 }
