@@ -179,11 +179,18 @@ func TestIsotropicPath(t *testing.T) {
 	cone := limit * (1 - math.Sqrt(1-1/(n*n)))
 	steep := pyramids(RegularPyramids)
 	steep.Angle, steep.Azimuth = 1.1, 0.3
+	lattice := pyramids(RegularPyramids)
+	lattice.Period = 9e3
+	rearLattice := opaque(RegularPyramids, 1)
+	rearLattice.Angle, rearLattice.Period = 0.8, 14e3
 	for _, c := range []struct {
 		front, rear Face
 		want        float64
 	}{
 		{Face{}, mirror, cone},
+		{lattice, mirror, limit},
+		{lattice, rearLattice, limit},
+		{Face{}, rearLattice, limit},
 		{pyramids(RegularPyramids), mirror, limit},
 		{steep, mirror, limit},
 		{pyramids(RandomPyramids), mirror, limit},
@@ -197,4 +204,7 @@ func TestIsotropicPath(t *testing.T) {
 		path := Estimate{Value: r.Path.Value * r.Entered.Value, Error: r.Path.Error*r.Entered.Value + r.Path.Value*r.Entered.Error}
 		within(t, fmt.Sprintf("%v on %v: path", c.front.Texture, c.rear.Texture), path, c.want, 1e-3)
 	}
+	w := Wafer{Index: n, Thickness: 160e3, Front: pyramids(RandomPyramids), Rear: mirror, Covers: []Cover{{Index: 1.52, Thickness: 3e6}, {Index: 1.48, Thickness: 4e5}}}
+	r := mustTrace(t, w, Light{Cone: math.Pi / 2}, Settings{Rays: 4096, Seed: 5})
+	within(t, "under covers: path", Estimate{Value: r.Path.Value * r.Entered.Value, Error: r.Path.Error*r.Entered.Value + r.Path.Value*r.Entered.Error}, limit, 1e-3)
 }
