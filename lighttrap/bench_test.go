@@ -2,6 +2,7 @@ package lighttrap_test
 
 import (
 	"fmt"
+	"math"
 	"testing"
 	"time"
 
@@ -39,4 +40,36 @@ func BenchmarkTraceAll(b *testing.B) {
 			})
 		}
 	}
+}
+
+// BenchmarkErrorExponent reports how the standard error of the absorber current
+// of the same wafers falls with the rays: 64 repetitions know it to 9 %.
+func BenchmarkErrorExponent(b *testing.B) {
+	wavelength, wafers := siliconWafers(b, lighttrap.Face{Texture: lighttrap.RandomPyramids, Angle: lighttrap.PyramidAngle})
+	var batch lighttrap.Batch
+	results := make([]lighttrap.Result, len(wafers))
+	for b.Loop() {
+		var standard [2]float64
+		for i, rays := range []int{8, 512} {
+			if _, err := batch.TraceAll(results, wafers, lighttrap.Light{}, lighttrap.Settings{Rays: 64 * rays, Repetitions: 64}); err != nil {
+				b.Fatal(err)
+			}
+			_, standard[i] = absorberCurrent(b, wavelength, results)
+		}
+		b.ReportMetric(math.Log(standard[1]/standard[0])/math.Log(512.0/8), "exponent")
+	}
+}
+
+// BenchmarkPlanar is one wafer with plane faces, in closed form.
+func BenchmarkPlanar(b *testing.B) {
+	metal := lighttrap.UniformFacet(0, 0.9)
+	w := lighttrap.Wafer{Index: 3.5, Absorption: 10, Thickness: 160e3, Rear: lighttrap.Face{Opaque: true, Films: &metal}}
+	var t lighttrap.Tracer
+	var r lighttrap.Result
+	for b.Loop() {
+		if err := t.Trace(&r, w, lighttrap.Light{Angle: 0.5}, lighttrap.Settings{Workers: 1}); err != nil {
+			b.Fatal(err)
+		}
+	}
+	b.ReportAllocs()
 }

@@ -73,7 +73,6 @@ type Tracer struct {
 	model   model
 	workers []worker
 	rows    []float64 // sums of each repetition
-	next    []float64
 }
 
 // worker traces rays.

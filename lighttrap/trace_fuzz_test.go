@@ -66,3 +66,35 @@ func FuzzTrace(f *testing.F) {
 		}
 	})
 }
+
+// FuzzFacetTable: any table is an error or keeps the shares at 1.
+func FuzzFacetTable(f *testing.F) {
+	f.Add(0.5, 0.3, 0.2, 0.6, 0.1, 1.0, 2.0, uint8(2))
+	f.Add(0.958, 1.0, 0.0, 0.0, 0.0, math.Pi, -1e9, uint8(5))
+	f.Add(1e-300, 0.0, 0.0, 1.0, 0.0, 0.0, 0.0, uint8(0))
+	f.Fuzz(func(t *testing.T, cos, rs, ts, rp, tp, phase, transmitted float64, texture uint8) {
+		row := func(v float64) []float64 { return []float64{1, v, v} }
+		zero := func(v float64) []float64 { return []float64{0, v, v} }
+		side := FacetSide{
+			Cos: []float64{0, cos, 1}, RS: row(rs), RP: row(rp), TS: zero(ts), TP: zero(tp),
+			AS: [][]float64{zero(1 - rs - ts)}, AP: [][]float64{zero(1 - rp - tp)},
+			Phase: []float64{0, phase, phase}, TransmittedPhase: []float64{0, transmitted, transmitted},
+		}
+		films := FacetTable{Outside: side, Inside: side}
+		w := Wafer{Index: 1, Absorption: 10, Thickness: 100e3, Front: Face{Texture: Texture(texture % textureKinds), Films: &films}}
+		w.Rear = Face{Opaque: true, Films: &films}
+		switch {
+		case w.Front.Texture.textured():
+			w.Front.Angle = 0.9
+		case w.Front.Texture == CosinePower:
+			w.Front.Exponent = 2
+		}
+		r, err := Trace(w, Light{Angle: 0.7, Polarization: P}, Settings{Rays: 16, Repetitions: 4, Workers: 1})
+		if err != nil {
+			return
+		}
+		if dev := math.Abs(total(&r) - 1); !(dev <= 1e-12) {
+			t.Errorf("shares miss 1 by %g: %+v", dev, r)
+		}
+	})
+}
