@@ -231,7 +231,7 @@ func (w *worker) source(l *Light) ray {
 // report turns the rows of the repetitions into means and standard errors.
 func (t *Tracer) report(dst *Result, w *Wafer, repetitions int) {
 	m := &t.model
-	at := func(i int, factor float64) Estimate { return t.estimate(i, 1, factor, repetitions) }
+	at := func(i int, factor float64) Estimate { return t.estimate(i, factor, repetitions) }
 	dst.Reflected, dst.Escaped, dst.Transmitted = at(sumReflected, 1), at(sumEscaped, 1), at(sumTransmitted, 1)
 	generating, free := 1.0, 0.0
 	if total := w.Absorption + w.FreeCarriers; total > 0 {
@@ -266,7 +266,7 @@ func (t *Tracer) report(dst *Result, w *Wafer, repetitions int) {
 }
 
 // estimate returns mean and standard error of sum number i.
-func (t *Tracer) estimate(i, stride int, factor float64, repetitions int) Estimate {
+func (t *Tracer) estimate(i int, factor float64, repetitions int) Estimate {
 	sums := t.model.sums
 	mean := 0.0
 	for k := range repetitions {

@@ -9,7 +9,7 @@ import (
 const (
 	maxSteps     = 1 << 20 // steps of one ray with its parts; what is left then is Unfinished
 	splitAbove   = 0.1     // both ways from a facet are followed if both carry this share
-	splitFirst   = 0.01    // the same for the first visit to the lit face
+	splitFirst   = 0.01    // the same on the way to the lit face and during the first visit
 	weightsAbove = 0.05    // absorption takes its share of a ray of this weight; weaker rays are absorbed as a whole or not at all
 	minCos       = 1e-12   // to the plane of the wafer
 	stackSize    = 160     // parts waiting
