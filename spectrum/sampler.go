@@ -104,6 +104,11 @@ func (p *Sampler) Sample(dst *Samples, s Spectrum, from, to float64, n int, f fu
 	}
 	p.finish(dst, s)
 	dst.Calls = calls - run.left
+	for i, v := range dst.Integral {
+		if !finite(v) || !finite(dst.Bound[i]) {
+			return fmt.Errorf("spectrum: sample: share %d: the integral is %g with a bound of %g, an overflow: %w", i, v, dst.Bound[i], ErrInput)
+		}
+	}
 	if !settled {
 		return fmt.Errorf("spectrum: sample: bound %.3g of the incident light after %d calls, want %.3g: %w", p.worst()/total, dst.Calls, tolerance, ErrSettle)
 	}
