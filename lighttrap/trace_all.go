@@ -9,15 +9,20 @@ import (
 
 // TraceAll traces many wafers under the same light, usually one wafer at many
 // wavelengths, and stores the results in dst; nil allocates, otherwise it must
-// be as long as wafers. Wafer i is traced as by [Trace] with the seed s.Seed + i,
-// so that the errors of different wavelengths are independent. s.Workers
-// goroutines share the wafers, and no bit depends on their number.
+// be as long as wafers. Wafer i is traced as by [Trace] with the seed
+// [BatchSeed](s.Seed, i), so that the errors of different wavelengths are
+// independent. s.Workers goroutines share the wafers, and no bit depends on their
+// number.
 //
 // Errors wrap [ErrInput]; the text names the number of the wafer.
 func TraceAll(dst []Result, wafers []Wafer, l Light, s Settings) ([]Result, error) {
 	var b Batch
 	return b.TraceAll(dst, wafers, l, s)
 }
+
+// BatchSeed returns the seed of wafer i of a batch. Neighbouring seeds of batches
+// share none.
+func BatchSeed(seed uint64, i int) uint64 { return mix64(mix64(seed) + uint64(i)*golden) }
 
 // Batch is [TraceAll] with memory of its own. The zero value is ready; it belongs
 // to one goroutine at a time.
@@ -81,6 +86,6 @@ func (b *Batch) share(dst []Result, wafers []Wafer, l Light, s Settings, workers
 // one traces wafer i.
 func (b *Batch) one(t *Tracer, dst []Result, wafers []Wafer, l Light, s Settings, i int) {
 	s.Workers = 1
-	s.Seed += uint64(i)
+	s.Seed = BatchSeed(s.Seed, i)
 	b.errs[i] = t.Trace(&dst[i], wafers[i], l, s)
 }

@@ -118,8 +118,8 @@ func TestSameBits(t *testing.T) {
 	var single []Result
 	for i, w := range wafers {
 		one, many := s, s
-		one.Workers, one.Seed = 1, s.Seed+uint64(i)
-		many.Workers, many.Seed = 3, s.Seed+uint64(i)
+		one.Workers, one.Seed = 1, BatchSeed(s.Seed, i)
+		many.Workers, many.Seed = 3, BatchSeed(s.Seed, i)
 		a := mustTrace(t, w, l, one)
 		b := mustTrace(t, w, l, many)
 		var c Result
@@ -142,6 +142,19 @@ func TestSameBits(t *testing.T) {
 		if diff := cmp.Diff(single, all); diff != "" {
 			t.Errorf("%d workers: %s", workers, diff)
 		}
+	}
+}
+
+// TestSeeds: batches of neighbouring seeds have no seed in common.
+func TestSeeds(t *testing.T) {
+	seen := map[uint64]bool{}
+	for seed := range uint64(200) {
+		for i := range 200 {
+			seen[BatchSeed(seed, i)] = true
+		}
+	}
+	if len(seen) != 200*200 {
+		t.Errorf("%d different seeds, want %d", len(seen), 200*200)
 	}
 }
 
