@@ -69,6 +69,9 @@ const (
 	MinIndex = 1e-6 // smallest modulus of an index
 	MaxIndex = 1e6  // largest modulus of an index
 	MaxPhase = 1e9  // rad, largest |k0 N d| of a film
+
+	MinWavelength = 1e-6 // nm
+	MaxWavelength = 1e15 // nm
 )
 
 // Validate reports the first value of the stack that is out of its range.
@@ -93,14 +96,24 @@ func (s Stack) Validate() error {
 
 // Validate reports the first value of the wave that is out of its range.
 func (w Wave) Validate() error {
-	if !(w.Wavelength > 0) || math.IsInf(w.Wavelength, 1) {
-		return fmt.Errorf("optics: wavelength %g nm is not a positive number: %w", w.Wavelength, ErrInput)
+	if err := checkWavelength(w.Wavelength); err != nil {
+		return fmt.Errorf("optics: %w", err)
 	}
 	if err := checkAngle(w.Angle); err != nil {
 		return fmt.Errorf("optics: %w", err)
 	}
 	if w.Polarization < Unpolarized || w.Polarization > P {
 		return fmt.Errorf("optics: unknown polarisation %d: %w", int(w.Polarization), ErrInput)
+	}
+	return nil
+}
+
+func checkWavelength(l float64) error {
+	if !(l > 0) || math.IsInf(l, 1) {
+		return fmt.Errorf("wavelength %g nm is not a positive number: %w", l, ErrInput)
+	}
+	if l < MinWavelength || l > MaxWavelength {
+		return fmt.Errorf("wavelength %g nm is not between %g and %g nm: %w", l, MinWavelength, MaxWavelength, ErrInput)
 	}
 	return nil
 }

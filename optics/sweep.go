@@ -207,8 +207,8 @@ func (s *Sweep) Validate() error {
 	}
 	shortest := math.Inf(1)
 	for i, l := range s.Wavelength {
-		if !(l > 0) || math.IsInf(l, 1) {
-			return fmt.Errorf("optics: sweep: wavelength %d: %g nm is not a positive number: %w", i, l, ErrInput)
+		if err := checkWavelength(l); err != nil {
+			return fmt.Errorf("optics: sweep: wavelength %d: %w", i, err)
 		}
 		if l < shortest {
 			shortest = l
