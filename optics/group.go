@@ -79,6 +79,7 @@ type group struct {
 	first, count, step int  // films in the order in which the light meets them
 	history            bool // keep the fields of every interface
 	mixed              bool // part of a mixed stack, whose balance needs asum and d
+	compact            bool // a single wave, for which e and a are packed, see crossCompact
 
 	fields []fieldRow // one in all, or count+1 with history: row j lies in front of film j, row count behind the last
 	film   filmRow
@@ -130,10 +131,13 @@ func (g *group) run(w *waveRow, films *filmTable, in, back *mediumRow, b int, no
 		g.a[p] = grow(g.a[p], g.count*lanes)
 		g.begin(&g.fields[rows-1][p], p, b)
 	}
-	if b == 1 {
-		g.crossSingle(w, films, normal)
-	} else {
+	switch {
+	case b > 1:
 		g.crossRows(w, films, b, normal)
+	case g.compact:
+		g.crossCompact(w, films, normal)
+	default:
+		g.crossSingle(w, films, normal)
 	}
 	for p := range pols {
 		g.amplitudes(p, b)
@@ -173,98 +177,36 @@ func (g *group) crossRows(w *waveRow, films *filmTable, b int, normal bool) {
 		n, k := films.row(film, b)
 		d, at := films.d[film], j*lanes
 		e, as := g.e[at:at+b], g.a[0][at:at+b]
+		long := f.paths(w, n, k, d, normal)
+		fastPhaseFactorRow(f, e)
+		if long {
+			f.correctPhase(w, n, k, d)
+		}
 		if normal {
-			if fastNormalPhases(f, w, n, k, e, d) {
-				f.correctPhase(w, n, k, d)
-			}
-			fastNormalFields(f, &g.fields[cur], &g.fields[next], n, k, e, as)
+			fastNormalMatrixRow(f, n, k, e)
+			fastNormalFields(f, &g.fields[cur], &g.fields[next], as)
 		} else {
-			if fastObliquePhases(f, w, n, k, e, d) {
-				f.correctPhase(w, n, k, d)
-			}
-			fastObliqueFields(f, &g.fields[cur], &g.fields[next], n, k, e, as, g.a[1][at:at+b])
+			fastMatrixRows(f, n, k, e)
+			fastBothFields(f, &g.fields[cur], &g.fields[next], as, g.a[1][at:at+b])
 		}
 		cur = next
-		g.keepOrder(cur, j, b, normal)
+		g.keepOrder(cur, j, b, lanes, normal)
 	}
 }
 
-// singleRow is the work of a single wavelength, for which the lanes hold films
-// instead.
-type singleRow struct {
-	wave    waveRow // n0 and q0sq of lane 0 in every lane; k0 times the thickness of the film
-	n, k, e [lanes]float64
-}
-
-// crossSingle does the same for lane 0 alone: everything but the fields is
-// found for many films at a time.
-func (g *group) crossSingle(w *waveRow, films *filmTable, normal bool) {
-	f := &g.film
-	cur := 0
-	if g.history {
-		cur = g.count
-	}
-	for end := g.count; end > 0; {
-		start := max(0, end-lanes)
-		g.matrices(w, films, start, end-start, normal)
-		for j := end - 1; j >= start; j-- {
-			next := cur
-			if g.history {
-				next = j
-			}
-			at := j * lanes
-			g.e[at] = g.single.e[j-start]
-			fieldsRow(f, &f.matrix[0], &g.fields[cur][0], &g.fields[next][0], g.a[0][at:at+1], j-start)
-			if !normal {
-				fieldsRow(f, &f.matrix[1], &g.fields[cur][1], &g.fields[next][1], g.a[1][at:at+1], j-start)
-			}
-			cur = next
-			g.keepOrder(cur, j, 1, normal)
-		}
-		end = start
-	}
-}
-
-// matrices finds the matrices of b films from film number start of the group
-// for the wave in lane 0.
-func (g *group) matrices(w *waveRow, films *filmTable, start, b int, normal bool) {
-	f, o := &g.film, &g.single
-	for i := range b {
-		film := g.first + (start+i)*g.step
-		at := film*films.stride + films.offset
-		o.n[i], o.k[i] = films.n[at], films.k[at]
-		o.wave.n0[i], o.wave.q0sq[i], o.wave.k0[i] = w.n0[0], w.q0sq[0], w.k0[0]*films.d[film]
-	}
-	// Whole vectors: the last film fills up.
-	full := min((b+vectorLanes-1)/vectorLanes*vectorLanes, lanes)
-	for i := b; i < full; i++ {
-		o.n[i], o.k[i] = o.n[b-1], o.k[b-1]
-		o.wave.n0[i], o.wave.q0sq[i], o.wave.k0[i] = o.wave.n0[b-1], o.wave.q0sq[b-1], o.wave.k0[b-1]
-	}
-	n, k, e := o.n[:full], o.k[:full], o.e[:full]
-	var long bool
+func (f *filmRow) paths(w *waveRow, n, k []float64, d float64, normal bool) (long bool) {
 	if normal {
-		long = fastNormalPhases(f, &o.wave, n, k, e, 1)
-	} else {
-		long = fastObliquePhases(f, &o.wave, n, k, e, 1)
+		return fastNormalPathRow(f, w, n, k, d)
 	}
-	if long {
-		for i := range b {
-			f.correctLane(i, w, 0, n[i], k[i], films.d[g.first+(start+i)*g.step])
-		}
-	}
-	if normal {
-		fastNormalMatrixRow(f, n, k, e)
-	} else {
-		fastMatrixRows(f, n, k, e)
-	}
+	return fastObliquePathRow(f, w, n, k, d)
 }
 
-// keepOrder looks at the fields in front of film j every few films.
-func (g *group) keepOrder(row, j, b int, normal bool) {
+// keepOrder looks at the fields in front of film j every few films. The
+// losses of film j are at a[j*stride:].
+func (g *group) keepOrder(row, j, b, stride int, normal bool) {
 	g.scaled[j] = false
 	if j%rescaleEvery == 0 && j > 0 {
-		g.rescale(&g.fields[row], j, b, normal)
+		g.rescale(&g.fields[row], j, b, stride, normal)
 	}
 }
 
@@ -276,7 +218,7 @@ const (
 
 // rescale brings fields that have grown or shrunk beyond the bounds back to
 // the order of one, by an exact power of two, and notes the factor.
-func (g *group) rescale(f *fieldRow, j, b int, normal bool) {
+func (g *group) rescale(f *fieldRow, j, b, stride int, normal bool) {
 	out := fastOrderRow(&f[0], b)
 	if !normal {
 		out = out || fastOrderRow(&f[1], b)
@@ -287,9 +229,9 @@ func (g *group) rescale(f *fieldRow, j, b int, normal bool) {
 	g.scaled[j] = true
 	g.scale = grow(g.scale, 2*g.count*lanes)
 	at := 2 * j * lanes
-	rescaleFields(&f[0], g.scale[at:at+b], g.a[0][j*lanes:])
+	rescaleFields(&f[0], g.scale[at:at+b], g.a[0][j*stride:])
 	if !normal {
-		rescaleFields(&f[1], g.scale[at+lanes:at+lanes+b], g.a[1][j*lanes:])
+		rescaleFields(&f[1], g.scale[at+lanes:at+lanes+b], g.a[1][j*stride:])
 	}
 }
 
@@ -367,12 +309,13 @@ func losslessAmplitudeRow(r, rr, ri, gain, h, l *[lanes]float64, f *polarRow, b 
 		b = lanes
 	}
 	for i := range b {
-		ur, ui, vr, vi := float64(h[i]*f.ur[i]), float64(h[i]*f.ui[i]), float64(l[i]*f.vr[i]), float64(l[i]*f.vi[i])
+		hr, lr := h[i], l[i]
+		ur, ui, vr, vi := float64(hr*f.ur[i]), float64(hr*f.ui[i]), float64(lr*f.vr[i]), float64(lr*f.vi[i])
 		pr, pi, mr, mi := ur+vr, ui+vi, ur-vr, ui-vi
 		inv := 1 / dot(pr, pi, pr, pi)
 		r[i] = dot(mr, mi, mr, mi) * inv
 		rr[i], ri[i] = dot(mr, mi, pr, pi)*inv, cross(mr, mi, pr, pi)*inv
-		gain[i] = 4 * h[i] * l[i] * inv
+		gain[i] = 4 * hr * lr * inv
 	}
 }
 
@@ -382,7 +325,7 @@ func (g *group) fluxes(p, b int) {
 	copy(gain, g.g[p][:b])
 	for j := range g.count {
 		aj := a[j*lanes : j*lanes+b]
-		shareRow(aj, gain, aj, g.e[j*lanes:j*lanes+b])
+		fastShareRow(aj, gain, aj, g.e[j*lanes:j*lanes+b])
 		if g.scaled[j] {
 			multiply(gain, g.scale[(2*j+p)*lanes:])
 		}
@@ -400,12 +343,13 @@ func (g *group) fluxes(p, b int) {
 	}
 }
 
-// deliver does the work of fluxes for b lanes from lane skip on and stores the
-// absorptances of the mean over the polarisations, film j at a[j*stride:]. The
-// weights are powers of two, so that the bits are those of weighing later.
-func (g *group) deliver(r, t, a []float64, stride, skip, b int, ws, wp float64) {
+// deliver does the work of fluxes for len(r) lanes from lane skip on and stores
+// the mean over the polarisations, film j at a[j*stride:]. The weights are powers
+// of two, so that the bits are those of weighing later.
+func (g *group) deliver(r, t, a []float64, stride, skip int, ws, wp float64) {
+	b := len(r)
 	gs, gp := g.film.phase[skip:skip+b], g.film.decay[skip:skip+b]
-	weigh(r[:b], g.r[0][skip:], g.r[1][skip:], ws, wp)
+	weigh(r, g.r[0][skip:], g.r[1][skip:], ws, wp)
 	fastScaleRow(gs, g.g[0][skip:skip+b], ws)
 	if wp != 0 {
 		fastScaleRow(gp, g.g[1][skip:skip+b], wp)
@@ -423,14 +367,12 @@ func (g *group) deliver(r, t, a []float64, stride, skip, b int, ws, wp float64) 
 			multiply(gp, g.scale[(2*j+1)*lanes+skip:])
 		}
 	}
-	multiply(gs, g.t[0][skip:])
+	// The last flux behind is what passes. Nobody reads the gains afterwards.
+	ts, tp := g.t[0][skip:skip+b], g.t[1][skip:skip+b]
 	if wp == 0 {
-		copy(t, gs)
-		return
-	}
-	multiply(gp, g.t[1][skip:])
-	for i := range t[:b] {
-		t[i] = gs[i] + gp[i]
+		fastShareRow(t, gs, ts, ts)
+	} else {
+		fastMeanShareRow(t, gs, gp, ts, tp, ts)
 	}
 }
 

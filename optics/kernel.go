@@ -5,18 +5,20 @@ import "math"
 // lanes is the number of wavelengths that the kernel carries through the
 // films together. It changes speed only: every wavelength is computed by the
 // same operations, whatever its neighbours.
-const lanes = 32
+const lanes = 64
 
 // tinyRoot keeps a vanishing normal wave number away from 0/0; a film with
 // |q| = 1e-100 is indistinguishable from one at its critical angle.
 const tinyRoot = 1e-100
 
-// The row functions of this file and of elementary.go are the kernel. Each is
-// one loop without branches over the lanes of a block, which gen/ also turns
-// into vector instructions. For that the bits must not depend on whether a
-// processor can fuse a product with a sum: every product that is added to
-// something is rounded by an explicit conversion, most of them in mulRe, mulIm,
-// dot and cross.
+// Row functions (…Row, …Rows) are the kernel: one loop without branches over the
+// lanes of a block. Package gen turns them into vector instructions, which are
+// called by the name of the row function with fast in front and give the same
+// bits. For that no bit may depend on whether a processor can fuse a product with
+// a sum: every product that is added to something is rounded by an explicit
+// conversion, most of them in mulRe, mulIm, dot and cross.
+//
+//go:generate go run ./gen
 
 // mulRe and mulIm return the real and the imaginary part of a b.
 func mulRe(ar, ai, br, bi float64) float64 { return float64(ar*br) - float64(ai*bi) }
@@ -90,25 +92,8 @@ func rootUpper(kr, ki float64) (qr, qi float64) {
 	return u, t
 }
 
-// obliquePhases finds the path and the phase factor of a film of thickness d
-// at oblique incidence. It reports whether a phase is long.
-func obliquePhases(f *filmRow, w *waveRow, n, k, e []float64, d float64) (long bool) {
-	b := len(n)
-	long = obliquePathRow(f, w, n, k, d)
-	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
-	expRow(e, f.m[:b], f.decay[:b])
-	return long
-}
-
-// normalPhases is obliquePhases at normal incidence.
-func normalPhases(f *filmRow, w *waveRow, n, k, e []float64, d float64) (long bool) {
-	b := len(n)
-	long = normalPathRow(f, w, n, k, d)
-	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
-	expRow(e, f.m[:b], f.decay[:b])
-	return long
-}
-
+// obliquePathRow finds the path of each wave through a film of thickness d at
+// oblique incidence. It reports whether a phase is long.
 func obliquePathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool) {
 	b := len(n)
 	if b > lanes {
@@ -129,7 +114,8 @@ func obliquePathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long boo
 	return long
 }
 
-// normalPathRow knows that q is the index itself.
+// normalPathRow is obliquePathRow at normal incidence, where q is the index
+// itself.
 func normalPathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool) {
 	b := len(n)
 	if b > lanes {
@@ -147,19 +133,25 @@ func normalPathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool
 	return long
 }
 
-// obliqueFields carries the fields of a block from the back of a film to its
-// front, both polarisations. in and out may be the same rows. as and ap receive
-// the flux that stays in the film in units of the scaled fields at its front.
-func obliqueFields(f *filmRow, in, out *fieldRow, n, k, e, as, ap []float64) {
-	matrixRows(f, n, k, e)
+// phaseFactorRow finds the parts of the complex phase factor of the first
+// len(e) lanes from their paths.
+func phaseFactorRow(f *filmRow, e []float64) {
+	b := len(e)
+	sincosRow(f.sin[:b], f.cos[:b], f.phase[:b])
+	expRow(e, f.m[:b], f.decay[:b])
+}
+
+// bothFields carries the fields of a block from the back of a film to its front,
+// both polarisations. in and out may be the same rows. as and ap receive the flux
+// that stays in the film in units of the scaled fields at its front.
+func bothFields(f *filmRow, in, out *fieldRow, as, ap []float64) {
 	fieldsRow(f, &f.matrix[0], &in[0], &out[0], as, 0)
 	fieldsRow(f, &f.matrix[1], &in[1], &out[1], ap, 0)
 }
 
-// normalFields is obliqueFields at normal incidence, where both polarisations
-// are the same.
-func normalFields(f *filmRow, in, out *fieldRow, n, k, e, as []float64) {
-	normalMatrixRow(f, n, k, e)
+// normalFields is bothFields at normal incidence, where both polarisations are
+// the same.
+func normalFields(f *filmRow, in, out *fieldRow, as []float64) {
 	fieldsRow(f, &f.matrix[0], &in[0], &out[0], as, 0)
 }
 

@@ -15,6 +15,7 @@ type block struct {
 	forward []group     // group i lies in front of incoherent film i, the last one behind all
 	reverse []group     // group i seen from incoherent film i
 	history bool
+	compact bool // a single wave of which only the shares are asked
 
 	r, t [2][lanes]float64
 	a    [2][]float64 // [film*lanes+lane]; those of the only group or sums
@@ -41,6 +42,8 @@ func (bl *block) prepare(incoherent []bool, films int) {
 	n := len(bl.thick)
 	for len(bl.forward) <= n {
 		bl.forward = append(bl.forward, group{})
+	}
+	for len(bl.reverse) < n {
 		bl.reverse = append(bl.reverse, group{})
 	}
 	if len(bl.media) < n {
@@ -52,11 +55,13 @@ func (bl *block) prepare(incoherent []bool, films int) {
 		end := films
 		if i < n {
 			end = bl.thick[i]
+			r := &bl.reverse[i]
+			r.first, r.count, r.step = end-1, end-first, -1
+			r.history, r.mixed = bl.history, true
 		}
-		f, r := &bl.forward[i], &bl.reverse[i]
+		f := &bl.forward[i]
 		f.first, f.count, f.step = first, end-first, 1
-		r.first, r.count, r.step = end-1, end-first, -1
-		f.history, f.mixed, r.history, r.mixed = bl.history, n > 0, bl.history, n > 0
+		f.history, f.mixed, f.compact = bl.history, n > 0, bl.compact && n == 0
 		first = end + 1
 	}
 	if n > 0 {

@@ -64,35 +64,6 @@ func (s *Solver) Solve(dst *Response, st Stack, w Wave) error {
 	return nil
 }
 
-// deliverSingle is deliver for lane 0 alone.
-func (g *group) deliverSingle(r *Response, ws, wp float64) {
-	r.A = grow(r.A, g.count)
-	gs, gp := ws*g.g[0][0], wp*g.g[1][0]
-	if wp == 0 {
-		r.R = ws * g.r[0][0]
-		for j := range r.A {
-			at := j * lanes
-			r.A[j] = gs * g.a[0][at]
-			gs *= g.e[at]
-			if g.scaled[j] {
-				gs *= g.scale[2*at]
-			}
-		}
-		r.T = gs * g.t[0][0]
-		return
-	}
-	r.R = float64(ws*g.r[0][0]) + float64(wp*g.r[1][0])
-	for j := range r.A {
-		at := j * lanes
-		r.A[j] = float64(gs*g.a[0][at]) + float64(gp*g.a[1][at])
-		gs, gp = gs*g.e[at], gp*g.e[at]
-		if g.scaled[j] {
-			gs, gp = gs*g.scale[2*at], gp*g.scale[2*at+lanes]
-		}
-	}
-	r.T = float64(gs*g.t[0][0]) + float64(gp*g.t[1][0])
-}
-
 // respond copies lane 0 of the solved block.
 func (s *Solver) respond(r *Response, films int, ws, wp float64) {
 	bl := &s.block
@@ -117,31 +88,47 @@ func (s *Solver) load(st Stack, w Wave, history bool) (normal bool, err error) {
 	if err := w.Validate(); err != nil {
 		return false, err
 	}
-	n := len(st.Films)
-	s.table.n, s.table.k, s.table.d = grow(s.table.n, n), grow(s.table.k, n), grow(s.table.d, n)
-	s.table.stride, s.table.offset = 1, 0
-	if cap(s.incoherent) < n {
-		s.incoherent = make([]bool, n)
-	}
-	s.incoherent = s.incoherent[:n]
-	usual := usualIndex(real(st.Front), 0) && imag(st.Front) == 0 && usualIndex(real(st.Back), imag(st.Back))
-	for j := range st.Films {
-		f := &st.Films[j]
-		re, im := real(f.Index), imag(f.Index)
-		s.table.n[j], s.table.k[j], s.table.d[j], s.incoherent[j] = re, im, f.Thickness, f.Incoherent
-		usual = usual && usualIndex(re, im) && f.Thickness >= 0 && usualPhase(re+im, f.Thickness, w.Wavelength) && !f.Incoherent
-	}
-	if !usual {
+	incoherent, usual := s.copyFilms(st.Films, w.Wavelength)
+	if !usual || !usualIndex(real(st.Front), imag(st.Front)) || imag(st.Front) != 0 || !usualIndex(real(st.Back), imag(st.Back)) {
 		if err := st.validateAt(w.Wavelength); err != nil {
 			return false, err
 		}
 	}
 	bl := &s.block
-	bl.history = history
-	bl.prepare(s.incoherent, n)
+	bl.history, bl.compact = history, !history
+	bl.prepare(incoherent, len(st.Films))
 	s.media = [4]float64{w.Wavelength, real(st.Front), real(st.Back), imag(st.Back)}
 	bl.load(w.Angle, s.media[:1], s.media[1:2], s.media[2:3], s.media[3:])
 	return w.Angle == 0, nil
+}
+
+// copyFilms fills the table. It returns which films are incoherent, nil for
+// none, and whether all are well inside their limits.
+func (s *Solver) copyFilms(films []Film, wavelength float64) (incoherent []bool, usual bool) {
+	t := &s.table
+	t.n, t.k, t.d = grow(t.n, len(films)), grow(t.k, len(films)), grow(t.d, len(films))
+	t.stride, t.offset = 1, 0
+	n, k, d := t.n[:len(films)], t.k[:len(films)], t.d[:len(films)]
+	mixed, path := false, MaxPhase/(2*math.Pi)*wavelength
+	usual = true
+	for j := range films {
+		f := &films[j]
+		re, im := real(f.Index), imag(f.Index)
+		n[j], k[j], d[j] = re, im, f.Thickness
+		mixed = mixed || f.Incoherent
+		usual = usual && usualIndex(re, im) && f.Thickness >= 0 && (re+im)*f.Thickness <= path
+	}
+	if !mixed {
+		return nil, usual
+	}
+	if cap(s.incoherent) < len(films) {
+		s.incoherent = make([]bool, len(films))
+	}
+	s.incoherent = s.incoherent[:len(films)]
+	for j, f := range films {
+		s.incoherent[j] = f.Incoherent
+	}
+	return s.incoherent, false
 }
 
 // validateAt reports the first value of the stack that is out of its range at
@@ -162,11 +149,6 @@ func (s Stack) validateAt(wavelength float64) error {
 // checkIndex need not be asked: the modulus lies between (n+k)/√2 and n+k.
 func usualIndex(n, k float64) bool {
 	return n >= 0 && k >= 0 && n+k >= 2*MinIndex && n+k <= MaxIndex
-}
-
-// usualPhase reports the same of the phase of a film whose n+k is sum.
-func usualPhase(sum, d, wavelength float64) bool {
-	return 2*math.Pi*sum*d <= MaxPhase*wavelength
 }
 
 // load sets the waves and the media in front and behind of one block.

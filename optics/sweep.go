@@ -139,28 +139,33 @@ func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
 	for job := from; job < to; job++ {
 		a, w0 := job/perAngle, job%perAngle*lanes
 		b := min(lanes, w-w0)
-		bl.load(s.Angle[a], s.Wavelength[w0:][:b], s.Front[w0:], s.BackN[w0:], s.BackK[w0:])
-		table.offset = w0
+		at := a*w + w0
+		// The last block starts a few lanes early, if it can, to be whole vectors.
+		skip := 0
+		if over := b % vectorLanes; over > 0 && w0 > 0 {
+			skip = vectorLanes - over
+		}
+		bl.load(s.Angle[a], s.Wavelength[w0-skip:][:b+skip], s.Front[w0-skip:], s.BackN[w0-skip:], s.BackK[w0-skip:])
+		table.offset = w0 - skip
 		normal := s.Angle[a] == 0
 		ws, wp := s.Polarization.weights()
 		if normal {
 			ws, wp = 1, 0
 		}
-		bl.run(&table, b, normal)
-		at := a*w + w0
-		r, t, shares := dst.R[at:], dst.T[at:], dst.A
+		bl.run(&table, b+skip, normal)
+		r, t, shares := dst.R[at:][:b], dst.T[at:][:b], dst.A
 		if films > 0 {
 			shares = shares[a*films*w+w0:]
 		}
 		if len(bl.thick) == 0 {
-			bl.forward[0].deliver(r, t, shares, w, 0, b, ws, wp)
+			bl.forward[0].deliver(r, t, shares, w, skip, ws, wp)
 			continue
 		}
-		bl.shares(b, normal)
-		weigh(r[:b], bl.r[0][:], bl.r[1][:], ws, wp)
-		weigh(t[:b], bl.t[0][:], bl.t[1][:], ws, wp)
+		bl.shares(b+skip, normal)
+		weigh(r, bl.r[0][skip:], bl.r[1][skip:], ws, wp)
+		weigh(t, bl.t[0][skip:], bl.t[1][skip:], ws, wp)
 		for j := range films {
-			weigh(shares[j*w:][:b], bl.a[0][j*lanes:], bl.a[1][j*lanes:], ws, wp)
+			weigh(shares[j*w:][:b], bl.a[0][j*lanes+skip:], bl.a[1][j*lanes+skip:], ws, wp)
 		}
 	}
 }
@@ -205,14 +210,9 @@ func (s *Sweep) Validate() error {
 	if s.Polarization < Unpolarized || s.Polarization > P {
 		return fmt.Errorf("optics: sweep: unknown polarisation %d: %w", int(s.Polarization), ErrInput)
 	}
-	shortest := math.Inf(1)
-	for i, l := range s.Wavelength {
-		if err := checkWavelength(l); err != nil {
-			return fmt.Errorf("optics: sweep: wavelength %d: %w", i, err)
-		}
-		if l < shortest {
-			shortest = l
-		}
+	shortest, err := s.shortest()
+	if err != nil {
+		return err
 	}
 	for i, a := range s.Angle {
 		if err := checkAngle(a); err != nil {
@@ -239,6 +239,36 @@ func (s *Sweep) Validate() error {
 		}
 	}
 	return nil
+}
+
+// shortest returns the shortest wavelength, which is mostly the first or the
+// last one.
+func (s *Sweep) shortest() (float64, error) {
+	w := len(s.Wavelength)
+	if w == 0 {
+		return 1, nil
+	}
+	least := min(s.Wavelength[0], s.Wavelength[w-1])
+	if least >= MinWavelength && !fastOutsideRow(s.Wavelength, least, MaxWavelength) {
+		return least, nil
+	}
+	for i, l := range s.Wavelength {
+		if err := checkWavelength(l); err != nil {
+			return 0, fmt.Errorf("optics: sweep: wavelength %d: %w", i, err)
+		}
+		least = min(least, l)
+	}
+	return least, nil
+}
+
+// outsideRow reports whether a value is not between lo and hi.
+func outsideRow(v []float64, lo, hi float64) (outside bool) {
+	for i := range v {
+		if !(v[i] >= lo && v[i] <= hi) {
+			outside = true
+		}
+	}
+	return outside
 }
 
 // checkFilm looks for anything unusual first, and only then asks value by value.

@@ -1,0 +1,5 @@
+//go:build !amd64 || purego
+
+package optics
+
+const vectorLanes = 1
