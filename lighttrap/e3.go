@@ -12,7 +12,8 @@ const euler = 0.57721566490153286060651209008240243
 //
 // Source: M. Abramowitz, I. A. Stegun, Handbook of Mathematical Functions
 // (1964), 5.1.11 and 5.1.14 (series), 5.1.22 (continued fraction). Relative
-// accuracy of both results 1e-14 for x from 1e-12 to 1e3.
+// accuracy of both results 1e-14 for every x, as long as t is a normal number
+// (x < 701).
 //
 // Special cases: NaN for x < 0 or NaN; 0 and 1 for +Inf.
 func DiffuseTransmittance(x float64) (t, loss float64) {
@@ -30,9 +31,15 @@ func DiffuseTransmittance(x float64) (t, loss float64) {
 	return t, 1 - t
 }
 
-// diffuseSlope returns dt/dx = -2 E2(x) of [DiffuseTransmittance].
-func diffuseSlope(x float64) float64 {
+// DiffuseTransmittanceSlope returns the derivative dt/dx = -2 E2(x) of
+// [DiffuseTransmittance] with respect to x = αW, as accurate as that. Source: as
+// there, 5.1.26.
+//
+// Special cases: NaN for x < 0 or NaN; -2 for 0; 0 for +Inf.
+func DiffuseTransmittanceSlope(x float64) float64 {
 	switch {
+	case !(x >= 0):
+		return math.NaN()
 	case x == 0:
 		return -2
 	case x <= 1:

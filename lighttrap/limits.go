@@ -43,6 +43,18 @@ func LimitAbsorptance(x, n float64) float64 {
 	return x / (x + 1/PathLimit(n))
 }
 
+// LimitAbsorptanceSlope returns the derivative of [LimitAbsorptance] with respect
+// to x: 4n²/(1 + 4n² x)².
+//
+// Special case: NaN unless x >= 0 and n >= 1.
+func LimitAbsorptanceSlope(x, n float64) float64 {
+	if !(x >= 0) {
+		return math.NaN()
+	}
+	d := 1 + PathLimit(n)*x
+	return PathLimit(n) / d / d
+}
+
 // TwoPassAbsorptance returns (1 - e)/(1 - (1-1/n²) e) with e = exp(-4x), the
 // absorptance of a slab with ideal faces whose light takes a mean path of four
 // thicknesses between its visits to the front. Source: H. W. Deckman, C. R.
@@ -56,4 +68,17 @@ func TwoPassAbsorptance(x, n float64) float64 {
 	}
 	loss, e := -math.Expm1(-4*x), math.Exp(-4*x)
 	return loss / (loss + e/(n*n))
+}
+
+// TwoPassAbsorptanceSlope returns the derivative of [TwoPassAbsorptance] with
+// respect to x: (4/n²) e/(1 - (1-1/n²) e)².
+//
+// Special case: NaN unless x >= 0 and n >= 1.
+func TwoPassAbsorptanceSlope(x, n float64) float64 {
+	if !(x >= 0 && n >= 1) {
+		return math.NaN()
+	}
+	e := math.Exp(-4 * x)
+	d := -math.Expm1(-4*x) + e/(n*n)
+	return 4 / (n * n) * e / d / d
 }

@@ -34,8 +34,9 @@ type Balance struct {
 	// for vanishing absorption is the mean path length.
 	PathFactor float64
 
-	// Slope is the derivative of Absorbed + FreeCarriers with respect to αW.
-	Slope float64
+	// Derivatives with respect to αW, α of both kinds together: of Absorbed +
+	// FreeCarriers, of Escaped and of RearLoss. They add up to 0.
+	Slope, EscapedSlope, RearLossSlope float64
 }
 
 func (s Slab) check() error {
@@ -74,7 +75,7 @@ type pass struct{ t, loss, slope, path, shortest float64 }
 
 func diffusePass(x float64) pass {
 	t, loss := DiffuseTransmittance(x)
-	return pass{t, loss, diffuseSlope(x), 2, 1}
+	return pass{t, loss, DiffuseTransmittanceSlope(x), 2, 1}
 }
 
 func straightPass(x, cos float64) pass {
@@ -148,10 +149,11 @@ func (s Slab) balance(f, p pass) Balance {
 	if den == 0 || in == 0 {
 		return b // nothing enters (checked), or all of it is reflected
 	}
-	up := f.t * rb / den // flux that starts upwards at the rear
+	rear := f.t / den // flux that meets the rear in all passes
+	up := rb * rear
 	absorbed := f.loss + up*p.loss*(1+rf*p.t)
 	b.Escaped = in * up * p.t * (1 - rf)
-	b.RearLoss = in * (1 - rb) * f.t / den
+	b.RearLoss = in * (1 - rb) * rear
 	x := s.opticalThickness()
 	if x > 0 {
 		share := s.Absorption / (s.Absorption + s.FreeCarriers)
@@ -169,8 +171,10 @@ func (s Slab) balance(f, p pass) Balance {
 	} else {
 		b.PathFactor = f.path + rb*p.path*(1+rf)/den
 	}
-	denSlope := -2 * rf * rb * p.t * p.slope
-	upSlope := rb * (f.slope - f.t*denSlope/den) / den
-	b.Slope = in * (-f.slope + upSlope*p.loss*(1+rf*p.t) + up*p.slope*(-(1+rf*p.t)+rf*p.loss))
+	rearSlope := (f.slope + 2*rf*rb*p.t*p.slope*rear) / den
+	upSlope := rb * rearSlope
+	b.EscapedSlope = in * (1 - rf) * (upSlope*p.t + up*p.slope)
+	b.RearLossSlope = in * (1 - rb) * rearSlope
+	b.Slope = -(b.EscapedSlope + b.RearLossSlope) // two negative terms
 	return b
 }
