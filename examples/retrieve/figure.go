@@ -21,12 +21,13 @@ func drawFigure(path string, s *sample, residuals []float64) error {
 		fitted[i] = plotter.XY{X: l, Y: s.measured[i] - residuals[i]}
 		rest[i] = plotter.XY{X: l, Y: residuals[i] / s.sigma[i]}
 	}
-	curve, points, err := plotter.NewLinePoints(measured)
+	points, err := plotter.NewScatter(measured)
 	if err != nil {
 		return err
 	}
 	points.GlyphStyle = draw.GlyphStyle{Color: dark, Radius: vg.Points(2), Shape: draw.RingGlyph{}}
-	if curve, err = plotter.NewLine(fitted); err != nil {
+	curve, err := plotter.NewLine(fitted)
+	if err != nil {
 		return err
 	}
 	curve.Color, curve.Width = rust, vg.Points(1.5)
