@@ -79,10 +79,11 @@ func BenchmarkSolve(b *testing.B) {
 			s := workload(5, angle*math.Pi/180)
 			w := len(s.Wavelength)
 			stacks := make([]Stack, w)
+			films := make([]Film, 5*w)
 			for i := range stacks {
-				st := Stack{Front: 1, Back: complex(s.BackN[i], s.BackK[i])}
+				st := Stack{Front: 1, Films: films[5*i : 5*i+5], Back: complex(s.BackN[i], s.BackK[i])}
 				for j, d := range s.Thickness {
-					st.Films = append(st.Films, Film{Index: complex(s.N[j*w+i], s.K[j*w+i]), Thickness: d})
+					st.Films[j] = Film{Index: complex(s.N[j*w+i], s.K[j*w+i]), Thickness: d}
 				}
 				stacks[i] = st
 			}

@@ -65,6 +65,7 @@ type filmTable struct {
 	n, k           []float64
 	d              []float64 // nm
 	stride, offset int
+	films          []Film // of a single wave, for which a compact group reads nothing else
 }
 
 func (t *filmTable) row(j, b int) (n, k []float64) {

@@ -61,7 +61,7 @@ func (bl *block) prepare(incoherent []bool, films int) {
 		}
 		f := &bl.forward[i]
 		f.first, f.count, f.step = first, end-first, 1
-		f.history, f.mixed, f.compact = bl.history, n > 0, bl.compact && n == 0
+		f.history, f.mixed, f.compact = bl.history, n > 0, bl.compact
 		first = end + 1
 	}
 	if n > 0 {

@@ -6,9 +6,9 @@ package optics
 
 // singleRow is the work of a single wavelength.
 type singleRow struct {
-	wave waveRow // n0 and q0sq of lane 0 in every lane; k0 times the thickness of the film
-	n, k [lanes]float64
-	e    [lanes]float64
+	wave    waveRow // n0 and q0sq of lane 0 in every lane; k0 times the thickness of the film
+	n, k, d [lanes]float64
+	e       [lanes]float64
 }
 
 // crossSingle is crossRows for lane 0 alone.
@@ -61,28 +61,42 @@ func (g *group) crossCompact(w *waveRow, films *filmTable, normal bool) {
 	}
 }
 
-// matrices finds the matrices of b films from film number start of the group
-// for the wave in lane 0.
-func (g *group) matrices(w *waveRow, films *filmTable, e []float64, start, b int, normal bool) {
-	f, o := &g.film, &g.single
-	n0, q0sq, k0 := w.n0[0], w.q0sq[0], w.k0[0]
-	// Whole vectors: what is left in the lanes behind the last film fills up.
-	full := min((b+vectorLanes-1)/vectorLanes*vectorLanes, lanes)
-	for i := range full {
-		o.wave.n0[i], o.wave.q0sq[i] = n0, q0sq
+// gather copies b films from film number start of the group on into the lanes.
+func (g *group) gather(w *waveRow, films *filmTable, start, b int) {
+	o, k0 := &g.single, w.k0[0]
+	if g.compact {
+		for i, f := range films.films[start : start+b] {
+			i &= lanes - 1
+			o.n[i], o.k[i], o.d[i], o.wave.k0[i] = real(f.Index), imag(f.Index), f.Thickness, k0*f.Thickness
+		}
+		return
 	}
 	film := g.first + start*g.step
 	for i := range b {
 		at := film*films.stride + films.offset
-		o.n[i], o.k[i], o.wave.k0[i] = films.n[at], films.k[at], k0*films.d[film]
+		o.n[i], o.k[i], o.d[i], o.wave.k0[i] = films.n[at], films.k[at], films.d[film], k0*films.d[film]
 		film += g.step
+	}
+}
+
+// matrices finds the matrices of b films from film number start of the group on
+// for the wave in lane 0, and their transmittances.
+func (g *group) matrices(w *waveRow, films *filmTable, e []float64, start, b int, normal bool) {
+	f, o := &g.film, &g.single
+	g.gather(w, films, start, b)
+	// Whole vectors: what is left in the lanes behind the last film fills up.
+	full := min((b+vectorLanes-1)/vectorLanes*vectorLanes, lanes)
+	if n0, q0sq := w.n0[0], w.q0sq[0]; !normal {
+		for i := range full {
+			o.wave.n0[i], o.wave.q0sq[i] = n0, q0sq
+		}
 	}
 	n, k, e := o.n[:full], o.k[:full], e[:full]
 	long := f.paths(&o.wave, n, k, 1, normal)
 	fastPhaseFactorRow(f, e)
 	if long {
 		for i := range b {
-			f.correctLane(i, w, 0, n[i], k[i], films.d[g.first+(start+i)*g.step])
+			f.correctLane(i, w, 0, n[i], k[i], o.d[i])
 		}
 	}
 	if normal {

@@ -88,47 +88,54 @@ func (s *Solver) load(st Stack, w Wave, history bool) (normal bool, err error) {
 	if err := w.Validate(); err != nil {
 		return false, err
 	}
-	incoherent, usual := s.copyFilms(st.Films, w.Wavelength)
+	mixed, usual := checkFilms(st.Films, w.Wavelength)
 	if !usual || !usualIndex(real(st.Front), imag(st.Front)) || imag(st.Front) != 0 || !usualIndex(real(st.Back), imag(st.Back)) {
 		if err := st.validateAt(w.Wavelength); err != nil {
 			return false, err
 		}
 	}
 	bl := &s.block
-	bl.history, bl.compact = history, !history
-	bl.prepare(incoherent, len(st.Films))
+	bl.history, bl.compact = history, !history && !mixed
+	s.table.films = st.Films
+	if !bl.compact {
+		s.copyFilms(st.Films)
+	}
+	if mixed {
+		bl.prepare(s.incoherent, len(st.Films))
+	} else {
+		bl.prepare(nil, len(st.Films))
+	}
 	s.media = [4]float64{w.Wavelength, real(st.Front), real(st.Back), imag(st.Back)}
 	bl.load(w.Angle, s.media[:1], s.media[1:2], s.media[2:3], s.media[3:])
 	return w.Angle == 0, nil
 }
 
-// copyFilms fills the table. It returns which films are incoherent, nil for
-// none, and whether all are well inside their limits.
-func (s *Solver) copyFilms(films []Film, wavelength float64) (incoherent []bool, usual bool) {
-	t := &s.table
-	t.n, t.k, t.d = grow(t.n, len(films)), grow(t.k, len(films)), grow(t.d, len(films))
-	t.stride, t.offset = 1, 0
-	n, k, d := t.n[:len(films)], t.k[:len(films)], t.d[:len(films)]
-	mixed, path := false, MaxPhase/(2*math.Pi)*wavelength
+// checkFilms reports whether a film is incoherent, and whether all films are
+// coherent and well inside their limits.
+func checkFilms(films []Film, wavelength float64) (mixed, usual bool) {
+	path := MaxPhase / (2 * math.Pi) * wavelength
 	usual = true
 	for j := range films {
 		f := &films[j]
 		re, im := real(f.Index), imag(f.Index)
-		n[j], k[j], d[j] = re, im, f.Thickness
 		mixed = mixed || f.Incoherent
 		usual = usual && usualIndex(re, im) && f.Thickness >= 0 && (re+im)*f.Thickness <= path
 	}
-	if !mixed {
-		return nil, usual
+	return mixed, usual && !mixed
+}
+
+// copyFilms fills the table and the list of incoherent films.
+func (s *Solver) copyFilms(films []Film) {
+	t, n := &s.table, len(films)
+	t.n, t.k, t.d = grow(t.n, n), grow(t.k, n), grow(t.d, n)
+	t.stride, t.offset = 1, 0
+	if cap(s.incoherent) < n {
+		s.incoherent = make([]bool, n)
 	}
-	if cap(s.incoherent) < len(films) {
-		s.incoherent = make([]bool, len(films))
-	}
-	s.incoherent = s.incoherent[:len(films)]
+	s.incoherent = s.incoherent[:n]
 	for j, f := range films {
-		s.incoherent[j] = f.Incoherent
+		t.n[j], t.k[j], t.d[j], s.incoherent[j] = real(f.Index), imag(f.Index), f.Thickness, f.Incoherent
 	}
-	return s.incoherent, false
 }
 
 // validateAt reports the first value of the stack that is out of its range at

@@ -96,6 +96,10 @@ func (s Stack) Validate() error {
 
 // Validate reports the first value of the wave that is out of its range.
 func (w Wave) Validate() error {
+	if w.Wavelength >= MinWavelength && w.Wavelength <= MaxWavelength && w.Angle >= 0 && w.Angle < math.Pi/2 &&
+		w.Polarization >= Unpolarized && w.Polarization <= P {
+		return nil
+	}
 	if err := checkWavelength(w.Wavelength); err != nil {
 		return fmt.Errorf("optics: %w", err)
 	}
