@@ -8,7 +8,8 @@
 // each with free-carrier absorption, at any absorption; the exact transmittance
 // of isotropic light, [DiffuseTransmittance]; its Fresnel reflectance,
 // [DiffuseReflectance]; the limits [PathLimit], [PathLimitAcceptance],
-// [LimitAbsorptance] and [TwoPassAbsorptance].
+// [LimitAbsorptance] and [TwoPassAbsorptance]. Light that scatters with a power of
+// the cosine: [ScatterDirection] and its moments.
 //
 // Rays: [Trace] follows light through a [Wafer] whose faces are planar, have
 // pyramids, pits or grooves of any facet angle, or scatter; [TraceAll] does so at

@@ -26,11 +26,11 @@ type GridShares struct {
 // its light back into the cell, which the optical width factor says: below 1
 // inside a module, 1 in air for flat fingers (common practice, no source).
 func (g Grid) Shares() (GridShares, error) {
-	finger, err := coverage("finger", g.FingerWidth, g.FingerPitch, g.FingerFactor)
+	finger, err := coverage(stripeNames{"finger width", "finger pitch", "optical width factor of a finger"}, g.FingerWidth, g.FingerPitch, g.FingerFactor)
 	if err != nil {
 		return GridShares{}, err
 	}
-	busbar, err := coverage("busbar", g.BusbarWidth, g.BusbarPitch, g.BusbarFactor)
+	busbar, err := coverage(stripeNames{"busbar width", "busbar pitch", "optical width factor of a busbar"}, g.BusbarWidth, g.BusbarPitch, g.BusbarFactor)
 	if err != nil {
 		return GridShares{}, err
 	}
@@ -42,27 +42,28 @@ func (g Grid) Shares() (GridShares, error) {
 	return s, nil
 }
 
+// stripeNames names the numbers of one kind of stripe in errors.
+type stripeNames struct{ width, pitch, factor string }
+
 // coverage returns the share of the area under parallel stripes.
-func coverage(name string, width, pitch, factor float64) (float64, error) {
-	for _, v := range []struct {
-		what  string
-		value float64
-	}{{" width", width}, {" pitch", pitch}} {
-		if err := checkAmount(name+v.what, " nm", v.value); err != nil {
-			return 0, err
-		}
+func coverage(n stripeNames, width, pitch, factor float64) (float64, error) {
+	if err := checkAmount(n.width, " nm", width); err != nil {
+		return 0, err
 	}
-	if err := checkShare("optical width factor of a "+name, factor); err != nil {
+	if err := checkAmount(n.pitch, " nm", pitch); err != nil {
+		return 0, err
+	}
+	if err := checkShare(n.factor, factor); err != nil {
 		return 0, err
 	}
 	if pitch == 0 {
 		if width > 0 {
-			return 0, fmt.Errorf("lighttrap: %s width %g nm without a pitch: %w", name, width, ErrInput)
+			return 0, fmt.Errorf("lighttrap: %s %g nm without a pitch: %w", n.width, width, ErrInput)
 		}
 		return 0, nil
 	}
 	if width > pitch {
-		return 0, fmt.Errorf("lighttrap: %s width %g nm exceeds its pitch %g nm: %w", name, width, pitch, ErrInput)
+		return 0, fmt.Errorf("lighttrap: %s %g nm exceeds its pitch %g nm: %w", n.width, width, pitch, ErrInput)
 	}
 	return width / pitch, nil
 }

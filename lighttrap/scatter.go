@@ -78,6 +78,6 @@ func ScatterDirection(m, u, v float64) (x, y, z float64) {
 	}
 	z = math.Pow(u, 1/(m+1))
 	s := math.Sqrt((1 - z) * (1 + z))
-	sin, cos := math.Sincos(2 * math.Pi * v)
+	sin, cos := math.Sincos(2 * math.Pi * (v - math.Floor(v)))
 	return s * cos, s * sin, z
 }

@@ -101,7 +101,7 @@ func (s Slab) Lambertian() (Balance, error) {
 
 // Planar returns the balance of a slab with planar faces, whose light runs at
 // the angle with cosine cos to the normal, all passes added as intensities.
-// Refraction is the caller's: cos is that inside.
+// Refraction is the caller's: cos is that inside, see [RefractedCosine].
 func (s Slab) Planar(cos float64) (Balance, error) {
 	if err := s.check(); err != nil {
 		return Balance{}, err

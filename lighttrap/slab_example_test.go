@@ -2,6 +2,7 @@ package lighttrap_test
 
 import (
 	"fmt"
+	"math"
 
 	"photonledger/lighttrap"
 )
@@ -38,4 +39,29 @@ func ExampleGrid_Shares() {
 	fmt.Printf("covered %.4f, shaded %.4f, recovered %.4f\n", s.Covered, s.Shaded, s.Recovered)
 	// Output:
 	// covered 0.0494, shaded 0.0396, recovered 0.0098
+}
+
+// How much diffuse light glass reflects, and how much it keeps of the light that is
+// scattered inside it.
+func ExampleDiffuseReflectance() {
+	outside, inside := lighttrap.DiffuseReflectance(1.5)
+	fmt.Printf("from outside %.4f, from inside %.4f\n", outside, inside)
+	// Output:
+	// from outside 0.0918, from inside 0.5963
+}
+
+// A rear that scatters into a narrow lobe traps less light than a Lambertian one:
+// shorter passes, and more light within the escape cone of the front.
+func ExampleScatterWithin() {
+	const n = 3.5
+	escape := math.Asin(1 / n) // half angle of the cone that leaves
+	for _, halfAngle := range []float64{60, 40, 20} {
+		m := lighttrap.ScatterExponent(halfAngle * math.Pi / 180)
+		fmt.Printf("%g°: exponent %.2f, mean path %.2f, in the escape cone %.3f\n",
+			halfAngle, m, lighttrap.ScatterMeanPath(m), lighttrap.ScatterWithin(m, escape))
+	}
+	// Output:
+	// 60°: exponent 1.00, mean path 2.00, in the escape cone 0.082
+	// 40°: exponent 2.60, mean path 1.38, in the escape cone 0.142
+	// 20°: exponent 11.14, mean path 1.09, in the escape cone 0.404
 }
