@@ -124,12 +124,16 @@ func (g *group) run(w *waveRow, films *filmTable, in, back *mediumRow, b int, no
 	if len(g.fields) < rows {
 		g.fields = make([]fieldRow, rows)
 	}
-	g.e = grow(g.e, g.count*lanes)
+	size := g.count * lanes
+	if g.compact {
+		size = g.count + vectorLanes
+	}
+	g.e = grow(g.e, size)
 	if len(g.scaled) < g.count {
 		g.scaled = make([]bool, g.count)
 	}
 	for p := range pols {
-		g.a[p] = grow(g.a[p], g.count*lanes)
+		g.a[p] = grow(g.a[p], size)
 		g.begin(&g.fields[rows-1][p], p, b)
 	}
 	switch {

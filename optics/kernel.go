@@ -100,6 +100,7 @@ func obliquePathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long boo
 		b = lanes
 	}
 	n, k = n[:b], k[:b]
+	_, _ = f.qr[0], w.n0[0] // so that the loop need not ask whether they are nil
 	for i := range n {
 		kr := float64((n[i]-w.n0[i])*(n[i]+w.n0[i])) - float64(k[i]*k[i]) + w.q0sq[i]
 		qr, qi := rootUpper(kr, 2*n[i]*k[i])
@@ -122,6 +123,7 @@ func normalPathRow(f *filmRow, w *waveRow, n, k []float64, d float64) (long bool
 		b = lanes
 	}
 	n, k = n[:b], k[:b]
+	_, _ = f.phase[0], w.k0[0] // so that the loop need not ask whether they are nil
 	for i := range n {
 		kd := w.k0[i] * d
 		x := kd * n[i]
@@ -252,6 +254,7 @@ func fieldsRow(f *filmRow, x *matrixRow, in, out *polarRow, a []float64, at int)
 		b = lanes
 	}
 	a = a[:b]
+	_, _, _, _ = f.cr[0], x.ar[0], in.ur[0], out.ur[0] // so that the loop need not ask whether they are nil
 	for i := range a {
 		j := (i + at) & (lanes - 1)
 		ur, ui, vr, vi := in.ur[i], in.ui[i], in.vr[i], in.vi[i]

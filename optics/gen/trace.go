@@ -266,8 +266,12 @@ func (t *tracer) branch(s *scope, cond *node, list []ast.Stmt) {
 	}
 }
 
-// assign executes an assignment. Right sides are evaluated first.
+// assign executes an assignment. Right sides are evaluated first. An assignment
+// to the blank name asks for nothing but pointers.
 func (t *tracer) assign(s *scope, st *ast.AssignStmt) {
+	if name, ok := st.Lhs[0].(*ast.Ident); ok && name.Name == "_" {
+		return
+	}
 	var right []value
 	if len(st.Rhs) == 1 && len(st.Lhs) > 1 {
 		right = t.eval(s, st.Rhs[0]).([]value)
@@ -290,9 +294,7 @@ func (t *tracer) assign(s *scope, st *ast.AssignStmt) {
 			if obj == nil {
 				obj = t.info.Uses[left]
 			}
-			if left.Name != "_" {
-				s.vars[obj] = v
-			}
+			s.vars[obj] = v
 		case *ast.IndexExpr:
 			t.store(t.eval(s, left.X).(place), v.(*node))
 		default:
