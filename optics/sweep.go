@@ -5,6 +5,7 @@ import (
 	"math"
 	"runtime"
 	"sync"
+	"sync/atomic"
 )
 
 // Sweep describes one stack at many wavelengths and angles. W is the number of
@@ -112,31 +113,37 @@ func (sw *Sweeper) Run(dst *SweepResponse, s *Sweep) error {
 		sw.blocks = make([]block, workers)
 	}
 	if workers == 1 {
-		runJobs(dst, s, &sw.blocks[0], 0, jobs)
+		var next atomic.Int64
+		runJobs(dst, s, &sw.blocks[0], &next, jobs)
 	} else {
 		sw.share(dst, s, jobs, workers)
 	}
 	return nil
 }
 
-// share gives every goroutine its part of the blocks.
+// share lets every goroutine take the next block when it is done with one.
 func (sw *Sweeper) share(dst *SweepResponse, s *Sweep, jobs, workers int) {
 	var wg sync.WaitGroup
+	var next atomic.Int64
 	for i := range workers {
-		wg.Go(func() { runJobs(dst, s, &sw.blocks[i], i*jobs/workers, (i+1)*jobs/workers) })
+		wg.Go(func() { runJobs(dst, s, &sw.blocks[i], &next, jobs) })
 	}
 	wg.Wait()
 }
 
-// runJobs computes blocks from..to-1, numbered along the wavelengths of each
-// angle in turn.
-func runJobs(dst *SweepResponse, s *Sweep, bl *block, from, to int) {
+// runJobs computes blocks from the next one on, numbered along the wavelengths
+// of each angle in turn.
+func runJobs(dst *SweepResponse, s *Sweep, bl *block, next *atomic.Int64, jobs int) {
 	w, films := len(s.Wavelength), len(s.Thickness)
 	table := filmTable{n: s.N, k: s.K, d: s.Thickness, stride: w}
 	bl.history = false
 	bl.prepare(s.Incoherent, films)
 	perAngle := (w + lanes - 1) / lanes
-	for job := from; job < to; job++ {
+	for {
+		job := int(next.Add(1)) - 1
+		if job >= jobs {
+			return
+		}
 		a, w0 := job/perAngle, job%perAngle*lanes
 		b := min(lanes, w-w0)
 		at := a*w + w0
