@@ -42,29 +42,53 @@ const (
 )
 
 // sincosRow stores the sine and cosine of each x with 0 <= x <= maxFastPhase;
-// those of larger x are meaningless.
+// those of larger x are meaningless. Two lanes at a time share the loading of
+// the constants.
 func sincosRow(sin, cos, x []float64) {
 	sin = sin[:len(x)]
 	cos = cos[:len(x)]
-	for i, v := range x {
-		t := float64(v*twoOverPi) + roundMagic
-		q := math.Float64bits(t)
-		f := t - roundMagic
-		r := (v - float64(f*pio2a)) - float64(f*pio2b)
-		z := float64(r * r)
-		z2 := float64(z * z)
-		s := r + float64(r*z*((sin3+float64(z*sin5))+
-			float64(z2*((sin7+float64(z*sin9))+float64(z2*(sin11+float64(z*sin13)))))))
-		c := (1 - 0.5*z) + float64(z2*((cos4+float64(z*cos6))+
-			float64(z2*((cos8+float64(z*cos10))+float64(z2*(cos12+float64(z*cos14)))))))
-		// The two low bits of q are the quadrant: odd ones exchange sine and
-		// cosine, the others set the signs.
-		sb, cb := math.Float64bits(s), math.Float64bits(c)
-		swap := (sb ^ cb) & -(q & 1)
-		sb ^= swap ^ (q&2)<<62
-		cb ^= swap ^ ((q+1)&2)<<62
-		sin[i], cos[i] = math.Float64frombits(sb), math.Float64frombits(cb)
+	for i := 1; i < len(x); i += 2 {
+		q0, r0 := reduceAngle(x[i-1])
+		q1, r1 := reduceAngle(x[i])
+		z0, z1 := float64(r0*r0), float64(r1*r1)
+		s0, s1 := sinOctant(r0, z0), sinOctant(r1, z1)
+		c0, c1 := cosOctant(z0), cosOctant(z1)
+		sin[i-1], cos[i-1] = quadrant(q0, s0, c0)
+		sin[i], cos[i] = quadrant(q1, s1, c1)
 	}
+	for i := len(x) &^ 1; i < len(x); i++ {
+		q, r := reduceAngle(x[i])
+		z := float64(r * r)
+		sin[i], cos[i] = quadrant(q, sinOctant(r, z), cosOctant(z))
+	}
+}
+
+// reduceAngle takes the nearest multiple of π/2 off v. The two low bits of q are
+// the quadrant.
+func reduceAngle(v float64) (q uint64, r float64) {
+	t := float64(v*twoOverPi) + roundMagic
+	f := t - roundMagic
+	return math.Float64bits(t), (v - float64(f*pio2a)) - float64(f*pio2b)
+}
+
+// sinOctant and cosOctant return the sine and cosine of |r| <= π/4, z = r².
+func sinOctant(r, z float64) float64 {
+	z2 := float64(z * z)
+	return r + float64(r*z*((sin3+float64(z*sin5))+float64(z2*((sin7+float64(z*sin9))+float64(z2*(sin11+float64(z*sin13)))))))
+}
+
+func cosOctant(z float64) float64 {
+	z2 := float64(z * z)
+	return (1 - 0.5*z) + float64(z2*((cos4+float64(z*cos6))+float64(z2*((cos8+float64(z*cos10))+float64(z2*(cos12+float64(z*cos14)))))))
+}
+
+// quadrant exchanges sine and cosine in the odd quadrants and sets their signs.
+func quadrant(q uint64, s, c float64) (sin, cos float64) {
+	sb, cb := math.Float64bits(s), math.Float64bits(c)
+	swap := (sb ^ cb) & -(q & 1)
+	sb ^= swap ^ (q&2)<<62
+	cb ^= swap ^ ((q+1)&2)<<62
+	return math.Float64frombits(sb), math.Float64frombits(cb)
 }
 
 const (
@@ -88,23 +112,44 @@ const (
 )
 
 // expRow stores exp(z) and 1 - exp(z) of each z <= 0, both with their full
-// relative accuracy.
+// relative accuracy, two lanes at a time.
 func expRow(e, m, z []float64) {
 	e = e[:len(z)]
 	m = m[:len(z)]
-	for i, v := range z {
-		if v < minExponent {
-			v = minExponent
-		}
-		t := float64(v*log2e) + roundMagic
-		f := t - roundMagic
-		r := (v - float64(f*ln2a)) - float64(f*ln2b)
-		r2 := float64(r * r)
-		r4 := r2 * r2
-		c := r - float64(r2*((exp1+float64(r2*exp2))+float64(r4*((exp3+float64(r2*exp4))+float64(r4*exp5)))))
-		p := r + r*c/(2-c)
-		scale := math.Float64frombits((math.Float64bits(t) + 1023) << 52)
-		e[i] = scale + float64(scale*p)
-		m[i] = (1 - scale) - float64(scale*p)
+	for i := 1; i < len(z); i += 2 {
+		q0, r0 := reduceExponent(z[i-1])
+		q1, r1 := reduceExponent(z[i])
+		p0, p1 := smallExpm1(r0), smallExpm1(r1)
+		e[i-1], m[i-1] = scaleExp(q0, p0)
+		e[i], m[i] = scaleExp(q1, p1)
 	}
+	for i := len(z) &^ 1; i < len(z); i++ {
+		q, r := reduceExponent(z[i])
+		e[i], m[i] = scaleExp(q, smallExpm1(r))
+	}
+}
+
+// reduceExponent takes the nearest multiple of ln 2 off v; q holds it in its low
+// bits.
+func reduceExponent(v float64) (q uint64, r float64) {
+	if v < minExponent {
+		v = minExponent
+	}
+	t := float64(v*log2e) + roundMagic
+	f := t - roundMagic
+	return math.Float64bits(t), (v - float64(f*ln2a)) - float64(f*ln2b)
+}
+
+// smallExpm1 returns exp(r) - 1 for |r| <= ln 2 / 2.
+func smallExpm1(r float64) float64 {
+	r2 := float64(r * r)
+	r4 := r2 * r2
+	c := r - float64(r2*((exp1+float64(r2*exp2))+float64(r4*((exp3+float64(r2*exp4))+float64(r4*exp5)))))
+	return r + r*c/(2-c)
+}
+
+// scaleExp returns exp and 1 - exp of q ln 2 + r, p = exp(r) - 1.
+func scaleExp(q uint64, p float64) (e, m float64) {
+	scale := math.Float64frombits((q + 1023) << 52)
+	return scale + float64(scale*p), (1 - scale) - float64(scale*p)
 }

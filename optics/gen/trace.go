@@ -203,6 +203,11 @@ func (t *tracer) block(s *scope, list []ast.Stmt) []value {
 			t.eval(s, st.X)
 		case *ast.RangeStmt:
 			t.loop(s, st)
+		case *ast.ForStmt:
+			// A loop in larger steps does the same for several lanes at a time.
+			if _, one := st.Post.(*ast.IncDecStmt); one {
+				t.lane(s, st.Init.(*ast.AssignStmt).Lhs[0], st.Body)
+			}
 		case *ast.IfStmt:
 			cond, ok := t.eval(s, st.Cond).(*node)
 			if !ok {
@@ -239,13 +244,15 @@ func (t *tracer) choose(cond *node, yes, no []value) []value {
 
 // loop executes the body of the loop over the lanes once.
 func (t *tracer) loop(s *scope, st *ast.RangeStmt) {
-	if st.Key != nil {
-		s.vars[t.info.Defs[st.Key.(*ast.Ident)]] = index{known: true, lane: true}
-	}
 	if st.Value != nil {
 		s.vars[t.info.Defs[st.Value.(*ast.Ident)]] = t.load(st, t.eval(s, st.X).(place))
 	}
-	t.block(s, st.Body.List)
+	t.lane(s, st.Key, st.Body)
+}
+
+func (t *tracer) lane(s *scope, key ast.Expr, body *ast.BlockStmt) {
+	s.vars[t.info.Defs[key.(*ast.Ident)]] = index{known: true, lane: true}
+	t.block(s, body.List)
 }
 
 // branch executes assignments that depend on a condition: every variable
