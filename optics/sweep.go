@@ -177,29 +177,6 @@ func runJobs(dst *SweepResponse, s *Sweep, bl *block, next *atomic.Int64, jobs i
 	}
 }
 
-// weigh stores the mean of the intensities of both polarisations.
-func weigh(dst, s, p []float64, ws, wp float64) {
-	if wp == 0 {
-		fastScaleRow(dst, s[:len(dst)], ws)
-	} else {
-		fastMeanRow(dst, s[:len(dst)], p[:len(dst)], ws, wp)
-	}
-}
-
-func scaleRow(dst, s []float64, ws float64) {
-	s = s[:len(dst)]
-	for i := range dst {
-		dst[i] = ws * s[i]
-	}
-}
-
-func meanRow(dst, s, p []float64, ws, wp float64) {
-	s, p = s[:len(dst)], p[:len(dst)]
-	for i := range dst {
-		dst[i] = float64(ws*s[i]) + float64(wp*p[i])
-	}
-}
-
 // Validate reports the first length or value of the sweep that is wrong.
 func (s *Sweep) Validate() error {
 	w, films := len(s.Wavelength), len(s.Thickness)
