@@ -8,7 +8,6 @@ type filmTable struct {
 	n, k           []float64
 	d              []float64 // nm
 	stride, offset int
-	films          []Film // of a single wave, for which a compact group reads nothing else
 }
 
 func (t *filmTable) row(j, b int) (n, k []float64) {
@@ -23,7 +22,6 @@ type group struct {
 	first, count, step int  // films in the order in which the light meets them
 	history            bool // keep the fields of every interface
 	mixed              bool // part of a mixed stack, whose balance needs asum and d
-	compact            bool // a single wave, for which e and a are packed, see crossCompact
 
 	fields []fieldRow // one in all, or count+1 with history: row j lies in front of film j, row count behind the last
 	film   filmRow
@@ -67,25 +65,18 @@ func (g *group) run(w *waveRow, films *filmTable, in, back *mediumRow, b int, no
 	if len(g.fields) < rows {
 		g.fields = make([]fieldRow, rows)
 	}
-	size := g.count * lanes
-	if g.compact {
-		size = g.count + vectorLanes
-	}
-	g.e = grow(g.e, size)
+	g.e = grow(g.e, g.count*lanes)
 	if len(g.scaled) < g.count {
 		g.scaled = make([]bool, g.count)
 	}
 	for p := range pols {
-		g.a[p] = grow(g.a[p], size)
+		g.a[p] = grow(g.a[p], g.count*lanes)
 		g.begin(&g.fields[rows-1][p], p, b)
 	}
-	switch {
-	case b > 1:
-		g.crossRows(w, films, b, normal)
-	case g.compact:
-		g.crossCompact(w, films, normal)
-	default:
+	if b == 1 {
 		g.crossSingle(w, films, normal)
+	} else {
+		g.crossRows(w, films, b, normal)
 	}
 	for p := range pols {
 		g.amplitudes(p, b)
@@ -138,7 +129,7 @@ func (g *group) crossRows(w *waveRow, films *filmTable, b int, normal bool) {
 			fastBothFields(f, &g.fields[cur], &g.fields[next], as, g.a[1][at:at+b])
 		}
 		cur = next
-		g.keepOrder(cur, j, b, lanes, normal)
+		g.keepOrder(cur, j, b, normal)
 	}
 }
 
@@ -149,12 +140,11 @@ func (f *filmRow) paths(w *waveRow, n, k []float64, d float64, normal bool) (lon
 	return fastObliquePathRow(f, w, n, k, d)
 }
 
-// keepOrder looks at the fields in front of film j every few films. The
-// losses of film j are at a[j*stride:].
-func (g *group) keepOrder(row, j, b, stride int, normal bool) {
+// keepOrder looks at the fields in front of film j every few films.
+func (g *group) keepOrder(row, j, b int, normal bool) {
 	g.scaled[j] = false
 	if j%rescaleEvery == 0 && j > 0 {
-		g.rescale(&g.fields[row], j, b, stride, normal)
+		g.rescale(&g.fields[row], j, b, lanes, normal)
 	}
 }
 
@@ -165,7 +155,8 @@ const (
 )
 
 // rescale brings fields that have grown or shrunk beyond the bounds back to
-// the order of one, by an exact power of two, and notes the factor.
+// the order of one, by an exact power of two, and notes the factor. The losses
+// of film j are at a[j*stride:].
 func (g *group) rescale(f *fieldRow, j, b, stride int, normal bool) {
 	out := fastOrderRow(&f[0], b)
 	if !normal {

@@ -94,8 +94,14 @@ const nearCritical = 1.0 / 16
 // correctBack finds q of lane i of the back medium again if it is near its
 // critical angle.
 func (bl *block) correctBack(i int, n, k float64) {
-	m, n0 := &bl.back, bl.wave.n0[i]
-	if dot(m.qr[i], m.qi[i], m.qr[i], m.qi[i]) < nearCritical*n0*n0 {
-		m.qr[i], m.qi[i] = rootUpper(squareNormal(n, k, n0, bl.wave.angle.sinSquared()).hi, 2*n*k)
+	m := &bl.back
+	m.qr[i], m.qi[i] = bl.wave.criticalRoot(i, m.qr[i], m.qi[i], n, k)
+}
+
+// criticalRoot returns q or, near the critical angle, a better one.
+func (w *waveRow) criticalRoot(i int, qr, qi, n, k float64) (float64, float64) {
+	if n0 := w.n0[i]; dot(qr, qi, qr, qi) < nearCritical*n0*n0 {
+		return rootUpper(squareNormal(n, k, n0, w.angle.sinSquared()).hi, 2*n*k)
 	}
+	return qr, qi
 }

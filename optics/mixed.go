@@ -15,7 +15,6 @@ type block struct {
 	forward []group     // group i lies in front of incoherent film i, the last one behind all
 	reverse []group     // group i seen from incoherent film i
 	history bool
-	compact bool // a single wave of which only the shares are asked
 
 	r, t [2][lanes]float64
 	a    [2][]float64 // [film*lanes+lane]; those of the only group or sums
@@ -33,6 +32,11 @@ type bulkRow struct {
 
 // prepare lays out groups and incoherent films; it depends on the stack only.
 func (bl *block) prepare(incoherent []bool, films int) {
+	if incoherent == nil && len(bl.thick) == 0 && len(bl.forward) > 0 {
+		f := &bl.forward[0]
+		f.first, f.count, f.step, f.history, f.mixed = 0, films, 1, bl.history, false
+		return
+	}
 	bl.thick = bl.thick[:0]
 	for j, inc := range incoherent {
 		if inc {
@@ -61,7 +65,7 @@ func (bl *block) prepare(incoherent []bool, films int) {
 		}
 		f := &bl.forward[i]
 		f.first, f.count, f.step = first, end-first, 1
-		f.history, f.mixed, f.compact = bl.history, n > 0, bl.compact
+		f.history, f.mixed = bl.history, n > 0
 		first = end + 1
 	}
 	if n > 0 {

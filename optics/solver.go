@@ -46,20 +46,21 @@ type Solver struct {
 // Solve is the function [Solve] with the memory of s. dst.A is grown when it is
 // too short and holds len(st.Films) values after a call without error.
 func (s *Solver) Solve(dst *Response, st Stack, w Wave) error {
-	normal, err := s.load(st, w, false)
+	mixed, err := st.validateFor(&w)
 	if err != nil {
 		return err
 	}
+	normal := w.Angle == 0
 	ws, wp := w.Polarization.weights()
 	if normal {
 		ws, wp = 1, 0
 	}
-	s.block.run(&s.table, 1, normal)
-	if len(s.block.thick) == 0 {
-		s.block.forward[0].deliverSingle(dst, ws, wp)
+	if !mixed {
+		s.block.solveSingle(dst, &st, &w, ws, wp)
 		return nil
 	}
-	s.block.shares(1, normal)
+	s.prepare(&st, &w, mixed, false)
+	s.block.solve(&s.table, 1, normal)
 	s.respond(dst, len(st.Films), ws, wp)
 	return nil
 }
@@ -85,21 +86,19 @@ func (s *Solver) respond(r *Response, films int, ws, wp float64) {
 // load checks the stack and the wave and copies them into lane 0. It reports
 // whether the light is incident normally.
 func (s *Solver) load(st Stack, w Wave, history bool) (normal bool, err error) {
-	if err := w.Validate(); err != nil {
+	mixed, err := st.validateFor(&w)
+	if err != nil {
 		return false, err
 	}
-	mixed, usual := checkFilms(st.Films, w.Wavelength)
-	if !usual || !usualIndex(real(st.Front), imag(st.Front)) || imag(st.Front) != 0 || !usualIndex(real(st.Back), imag(st.Back)) {
-		if err := st.validateAt(w.Wavelength); err != nil {
-			return false, err
-		}
-	}
+	s.prepare(&st, &w, mixed, history)
+	return w.Angle == 0, nil
+}
+
+// prepare does what load does with a stack that has been checked.
+func (s *Solver) prepare(st *Stack, w *Wave, mixed, history bool) {
+	s.copyFilms(st.Films)
 	bl := &s.block
-	bl.history, bl.compact = history, !history && !mixed
-	s.table.films = st.Films
-	if !bl.compact {
-		s.copyFilms(st.Films)
-	}
+	bl.history = history
 	if mixed {
 		bl.prepare(s.incoherent, len(st.Films))
 	} else {
@@ -107,7 +106,19 @@ func (s *Solver) load(st Stack, w Wave, history bool) (normal bool, err error) {
 	}
 	s.media = [4]float64{w.Wavelength, real(st.Front), real(st.Back), imag(st.Back)}
 	bl.load(w.Angle, s.media[:1], s.media[1:2], s.media[2:3], s.media[3:])
-	return w.Angle == 0, nil
+}
+
+// validateFor reports the first value that is out of its range, and whether a
+// film is incoherent.
+func (s *Stack) validateFor(w *Wave) (mixed bool, err error) {
+	if err := w.Validate(); err != nil {
+		return false, err
+	}
+	mixed, usual := checkFilms(s.Films, w.Wavelength)
+	if usual && imag(s.Front) == 0 && usualIndex(real(s.Front), 0) && usualIndex(real(s.Back), imag(s.Back)) {
+		return mixed, nil
+	}
+	return mixed, s.validateAt(w.Wavelength)
 }
 
 // checkFilms reports whether a film is incoherent, and whether all films are
@@ -140,7 +151,7 @@ func (s *Solver) copyFilms(films []Film) {
 
 // validateAt reports the first value of the stack that is out of its range at
 // the wavelength.
-func (s Stack) validateAt(wavelength float64) error {
+func (s *Stack) validateAt(wavelength float64) error {
 	if err := s.Validate(); err != nil {
 		return err
 	}
