@@ -20,6 +20,7 @@ const bandEdge = 800.0
 type layer struct {
 	name, material string
 	thickness      float64 // nm
+	origin         string  // of the optical constants
 }
 
 // Positions of the absorbers among the layers.
@@ -31,68 +32,91 @@ const (
 // cell is the stack as a sweep, with the weights of both photocurrents.
 type cell struct {
 	layers      []layer
+	metal       layer // behind the last one
 	sweep       optics.Sweep
 	sweeper     optics.GradientSweeper
 	weights     []float64            // mA/cm² of one electron per photon
 	top, bottom *optics.SweepWeights // of the two photocurrents
 }
 
+// effect holds what the thickness of one layer changes, per nm: both currents
+// (mA/cm²), and at the match its place (nm of perovskite) and its current.
+type effect struct{ top, bottom, match, matched float64 }
+
 // point is the state at one thickness of the perovskite; currents in mA/cm².
 type point struct {
-	thickness, top, bottom, tail float64
-	slope                        float64 // of top - bottom, per nm of perovskite
-
-	takes                         []float64 // by each layer
-	topSlopes, bottomSlopes       []float64 // derivatives of the currents per nm of each layer
-	reflected, transmitted, total float64
-	response                      optics.SweepResponse
+	thickness, top, bottom float64
+	takes                  []float64 // by each layer
+	tail                   float64   // of what the perovskite takes, beyond its band edge
+	reflected, transmitted float64
+	total                  float64
+	effects                []effect // of each layer
+	response               optics.SweepResponse
 }
 
-func newCell(o options) (*cell, error) {
-	c := &cell{layers: []layer{
-		{"magnesium fluoride", "mgf2_rodriguez2017", 100},
-		{"front oxide", "ito_minenkov2024", o.front},
-		{"perovskite", "mapbi3_phillips2015", 500},
-		{"junction oxide", "ito_minenkov2024", o.back},
-		{"silicon", "si_green2008", o.wafer * pilot.NMPerMicron},
-		{"rear oxide", "sio2_rodriguez2016", pilot.RearOxide},
-	}}
+// newCell fills the sweep. Without the tail, the k of the perovskite is 0 beyond
+// its band edge. All tables cover the wavelengths: that of the perovskite begins
+// at 300.01 nm.
+func newCell(o options, tail bool) (*cell, error) {
+	c := &cell{
+		layers: []layer{
+			{name: "magnesium fluoride", material: "mgf2_rodriguez2017", thickness: o.fluoride},
+			{name: "front oxide", material: "ito_minenkov2024", thickness: o.front},
+			{name: "perovskite", material: "mapbi3_phillips2015"},
+			{name: "junction oxide", material: "ito_minenkov2024", thickness: o.back},
+			{name: "silicon", material: "si_green2008", thickness: o.wafer * pilot.NMPerMicron},
+			{name: "rear oxide", material: "sio2_rodriguez2016", thickness: pilot.RearOxide},
+		},
+		metal: layer{name: "rear metal", material: "al_rakic1995"},
+	}
 	var wavelength []float64
 	for l := 302.0; l <= 1200; l += 2 {
 		wavelength = append(wavelength, l)
 	}
+	edge, _ := slices.BinarySearch(wavelength, bandEdge)
 	c.sweep = optics.NewSweep(wavelength, len(c.layers))
 	c.sweep.Incoherent[silicon] = true
-	c.sweep.Workers = 0
-	for j, l := range c.layers {
-		index, err := sample(l.material, wavelength)
+	for j := range c.layers {
+		index, err := c.layers[j].sample(wavelength)
 		if err != nil {
 			return nil, err
 		}
-		if err := c.sweep.SetFilm(j, index, l.thickness); err != nil {
+		if j == perovskite && !tail {
+			for i := edge; i < len(index); i++ {
+				index[i] = complex(real(index[i]), 0)
+			}
+		}
+		if err := c.sweep.SetFilm(j, index, c.layers[j].thickness); err != nil {
 			return nil, err
 		}
 	}
-	metal, err := sample("al_rakic1995", wavelength)
+	metal, err := c.metal.sample(wavelength)
 	if err != nil {
 		return nil, err
 	}
 	if err := c.sweep.SetBack(metal); err != nil {
 		return nil, err
 	}
+	w := len(wavelength)
 	if c.weights, err = spectrum.Weights(nil, spectrum.AM15G(), wavelength, spectrum.Photons); err != nil {
 		return nil, err
 	}
-	w := len(wavelength)
-	c.top, c.bottom = &optics.SweepWeights{A: make([]float64, len(c.layers)*w)}, &optics.SweepWeights{A: make([]float64, len(c.layers)*w)}
-	edge, _ := slices.BinarySearch(wavelength, bandEdge)
-	copy(c.top.A[perovskite*w:perovskite*w+edge], c.weights)
-	copy(c.bottom.A[silicon*w:(silicon+1)*w], c.weights)
-	return c, nil
+	c.top = &optics.SweepWeights{A: make([]float64, len(c.layers)*w)}
+	c.bottom = &optics.SweepWeights{A: make([]float64, len(c.layers)*w)}
+	copy(c.bottom.A[silicon*w:], c.weights)
+	_, err = spectrum.Weights(c.top.A[perovskite*w:perovskite*w+edge+1], spectrum.AM15G(), wavelength[:edge+1], spectrum.Photons)
+	return c, err
 }
 
-func sample(name string, wavelength []float64) ([]complex128, error) {
-	material, err := nk.Material(name)
+// sample returns the indices of a layer and notes where they come from.
+func (l *layer) sample(wavelength []float64) ([]complex128, error) {
+	table, err := nk.MaterialTable(l.material)
+	if err != nil {
+		return nil, err
+	}
+	low, high := table.Range()
+	l.origin = fmt.Sprintf("%s, %.5g nm to %.5g nm; %s", table.Source, low, high, table.Conditions)
+	material, err := table.Interpolate()
 	if err != nil {
 		return nil, err
 	}
@@ -102,12 +126,7 @@ func sample(name string, wavelength []float64) ([]complex128, error) {
 // at computes currents and derivatives at a thickness of the perovskite.
 func (c *cell) at(thickness float64) (point, error) {
 	c.sweep.Thickness[perovskite] = thickness
-	return c.atPresent()
-}
-
-// atPresent computes currents and derivatives at the thicknesses of the sweep.
-func (c *cell) atPresent() (point, error) {
-	p := point{thickness: c.sweep.Thickness[perovskite]}
+	p := point{thickness: thickness}
 	var top, bottom optics.SweepGradient
 	if err := c.sweeper.Run(&top, &p.response, &c.sweep, c.top); err != nil {
 		return p, err
@@ -116,8 +135,14 @@ func (c *cell) atPresent() (point, error) {
 		return p, err
 	}
 	p.top, p.bottom = top.Value, bottom.Value
-	p.topSlopes, p.bottomSlopes = top.Thickness, bottom.Thickness
-	p.slope = top.Thickness[perovskite] - bottom.Thickness[perovskite]
+	// The match moves along top = bottom: its slope follows from the implicit
+	// function theorem.
+	slope := top.Thickness[perovskite] - bottom.Thickness[perovskite]
+	for j, t := range top.Thickness {
+		b := bottom.Thickness[j]
+		move := (b - t) / slope
+		p.effects = append(p.effects, effect{top: t, bottom: b, match: move, matched: t + top.Thickness[perovskite]*move})
+	}
 	w := len(c.weights)
 	for j := range c.layers {
 		p.takes = append(p.takes, floats.Dot(c.weights, p.response.A[j*w:(j+1)*w]))
@@ -128,22 +153,23 @@ func (c *cell) atPresent() (point, error) {
 	return p, nil
 }
 
-// curve returns n points between two thicknesses.
-func (c *cell) curve(from, to float64, n int) ([]point, error) {
-	var points []point
-	for i := range n {
-		p, err := c.at(from + (to-from)*float64(i)/float64(n-1))
+// design returns the currents over the thickness of the perovskite, and the match.
+func (c *cell) design() (curve []point, match point, err error) {
+	for d := 100.0; d <= 1000; d += 20 {
+		p, err := c.at(d)
 		if err != nil {
-			return nil, err
+			return nil, p, err
 		}
-		points = append(points, p)
+		curve = append(curve, p)
 	}
-	return points, nil
+	match, err = c.match(curve)
+	return curve, match, err
 }
 
 // match finds the thickness of equal currents: Newton's steps with the derivative
 // of the sweep, kept between the points of the curve that enclose the zero.
 func (c *cell) match(curve []point) (point, error) {
+	const enough = 1e-10 // mA/cm²
 	for i := 1; i < len(curve); i++ {
 		lo, hi := curve[i-1], curve[i]
 		if (lo.top-lo.bottom)*(hi.top-hi.bottom) > 0 {
@@ -151,7 +177,7 @@ func (c *cell) match(curve []point) (point, error) {
 		}
 		p := lo
 		for range 50 {
-			next := p.thickness - (p.top-p.bottom)/p.slope
+			next := p.thickness - (p.top-p.bottom)/(p.effects[perovskite].top-p.effects[perovskite].bottom)
 			if !(next > lo.thickness && next < hi.thickness) {
 				next = 0.5 * (lo.thickness + hi.thickness)
 			}
@@ -160,13 +186,13 @@ func (c *cell) match(curve []point) (point, error) {
 				return p, err
 			}
 			difference := p.top - p.bottom
+			if difference < enough && difference > -enough {
+				return p, nil
+			}
 			if difference*(lo.top-lo.bottom) > 0 {
 				lo = p
 			} else {
 				hi = p
-			}
-			if difference < 1e-10 && difference > -1e-10 {
-				return p, nil
 			}
 		}
 		return p, fmt.Errorf("the currents differ by %g mA/cm² after 50 steps", p.top-p.bottom)

@@ -3,113 +3,119 @@ package main
 import (
 	"fmt"
 	"image/color"
-	"os"
 
 	"gonum.org/v1/plot"
 	"gonum.org/v1/plot/plotter"
+	"gonum.org/v1/plot/text"
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
-	"gonum.org/v1/plot/vg/vgimg"
-)
 
-var (
-	dark  = color.RGBA{R: 18, G: 52, B: 92, A: 255}
-	rust  = color.RGBA{R: 176, G: 72, B: 32, A: 255}
-	green = color.RGBA{R: 92, G: 120, B: 84, A: 255}
-	grey  = color.RGBA{R: 150, G: 150, B: 150, A: 255}
+	"photonledger/examples/internal/picture"
 )
 
 // drawFigure writes two panels: the currents over the thickness of the
 // perovskite, and where the photons go at the match.
 func drawFigure(path string, c *cell, curve []point, m point) error {
-	currents := panel("thickness of the perovskite (nm)", "photocurrent (mA/cm²)")
-	currents.Title.Text = fmt.Sprintf("match at %.0f nm, %.2f mA/cm²", m.thickness, m.top)
-	top, bottom := make(plotter.XYs, len(curve)), make(plotter.XYs, len(curve))
-	for i, p := range curve {
-		top[i], bottom[i] = plotter.XY{X: p.thickness, Y: p.top}, plotter.XY{X: p.thickness, Y: p.bottom}
-	}
-	if err := add(currents, "perovskite", top, rust, nil); err != nil {
+	const panel, key, height = 11.5 * vg.Centimeter, 5.2 * vg.Centimeter, 9.5 * vg.Centimeter
+	currents, err := drawCurrents(curve, m)
+	if err != nil {
 		return err
 	}
-	if err := add(currents, "silicon", bottom, dark, []vg.Length{7, 3}); err != nil {
+	shares, legend, err := drawShares(c, m)
+	if err != nil {
 		return err
 	}
-	currents.Legend.Top = false
-	currents.Legend.YOffs = 3 * vg.Centimeter // between the lines
+	return picture.Save(path, 2*panel+key, height, func(dc draw.Canvas) error {
+		currents.Draw(draw.Crop(dc, 4, -panel-key-12, 4, -4))
+		shares.Draw(draw.Crop(dc, panel+4, -key-8, 4, -4))
+		legend.Draw(draw.Crop(dc, 2*panel+4, -4, 0, -30))
+		return nil
+	})
+}
 
-	shares := panel("wavelength (nm)", "share of the incident photons")
-	shares.Title.Text = "at the match"
-	shares.Y.Min, shares.Y.Max = 0, 1.3 // room for the legend
-	var ticks plot.ConstantTicks
-	shares.Legend.Top = true
-	for _, v := range []float64{0, 0.2, 0.4, 0.6, 0.8, 1} {
-		ticks = append(ticks, plot.Tick{Value: v, Label: fmt.Sprint(v)})
+// drawCurrents shows both currents and where they meet.
+func drawCurrents(curve []point, m point) (*plot.Plot, error) {
+	var d, top, bottom []float64
+	for _, p := range curve {
+		d, top, bottom = append(d, p.thickness), append(top, p.top), append(bottom, p.bottom)
 	}
-	shares.Y.Tick.Marker = ticks
-	w := len(c.sweep.Wavelength)
-	series := func(values []float64) plotter.XYs {
-		xy := make(plotter.XYs, w)
-		for i, l := range c.sweep.Wavelength {
-			xy[i] = plotter.XY{X: l, Y: values[i]}
+	p := picture.Panel("photocurrents of the junctions", "thickness of the perovskite (nm)", "photocurrent (mA/cm²)")
+	if err := picture.Line(p, "perovskite", d, top, picture.Rust, picture.Solid); err != nil {
+		return nil, err
+	}
+	if err := picture.Line(p, "silicon", d, bottom, picture.Ink, picture.Dashed); err != nil {
+		return nil, err
+	}
+	match, err := plotter.NewScatter(plotter.XYs{{X: m.thickness, Y: m.top}})
+	if err != nil {
+		return nil, err
+	}
+	match.GlyphStyle = draw.GlyphStyle{Color: color.Black, Radius: vg.Points(4.5), Shape: draw.RingGlyph{}}
+	label, err := plotter.NewLabels(plotter.XYLabels{XYs: plotter.XYs{{X: m.thickness, Y: m.top}}, Labels: []string{fmt.Sprintf("match: %.0f nm, %.2f mA/cm²", m.thickness, m.top)}})
+	if err != nil {
+		return nil, err
+	}
+	label.TextStyle[0].YAlign = text.YCenter
+	label.Offset.X = vg.Points(10)
+	p.Add(match, label)
+	p.X.Tick.Marker = picture.Ticks(100, 200, 300, 400, 500, 600, 700, 800, 900, 1000)
+	p.Y.Min, p.Y.Max = 0, 30 // the legend stands below the lines
+	p.Y.Tick.Marker = picture.Ticks(0, 5, 10, 15, 20, 25, 30)
+	p.Legend.XOffs, p.Legend.YOffs = -8, 8
+	return p, nil
+}
+
+// drawShares stacks what every layer takes. Neighbours differ in lightness.
+func drawShares(c *cell, m point) (*plot.Plot, plot.Legend, error) {
+	p := picture.Panel("where the photons go at the match", "wavelength (nm)", "share of the incident photons")
+	p.X.Tick.Marker, p.Y.Tick.Marker = picture.Ticks(400, 600, 800, 1000, 1200), picture.Ticks(0, 0.2, 0.4, 0.6, 0.8, 1)
+	legend := plot.NewLegend()
+	legend.TextStyle.Font.Size = 11
+	legend.Top, legend.Left, legend.Padding, legend.ThumbnailWidth = true, true, 4, 18
+	w := len(c.weights)
+	film := func(j int) []float64 { return m.response.A[j*w : (j+1)*w] }
+	useful, tail, rear := make([]float64, w), make([]float64, w), make([]float64, w)
+	for i, l := range c.sweep.Wavelength {
+		if l <= bandEdge {
+			useful[i] = film(perovskite)[i]
+		} else {
+			tail[i] = film(perovskite)[i]
 		}
-		return xy
+		rear[i] = film(5)[i] + m.response.T[i]
 	}
-	oxides := make([]float64, w)
-	for i := range oxides {
-		for _, j := range []int{0, 1, 3, 5} {
-			oxides[i] += m.response.A[j*w+i]
-		}
-		oxides[i] += m.response.T[i]
-	}
-	for _, s := range []struct {
-		name   string
-		values []float64
-		color  color.Color
-		dash   []vg.Length
+	base := make([]float64, w)
+	areas := []struct {
+		name  string
+		share []float64
+		color color.RGBA
 	}{
-		{"perovskite", m.response.A[perovskite*w : (perovskite+1)*w], rust, nil},
-		{"silicon", m.response.A[silicon*w : (silicon+1)*w], dark, []vg.Length{7, 3}},
-		{"reflected or escaped", m.response.R, grey, []vg.Length{2, 2}},
-		{"oxides, fluoride and metal", oxides, green, []vg.Length{9, 3, 2, 3}},
-	} {
-		if err := add(shares, s.name, series(s.values), s.color, s.dash); err != nil {
-			return err
+		{"silicon", film(silicon), picture.Ink},
+		{"perovskite", useful, picture.Ochre},
+		{fmt.Sprintf("perovskite, tail > %g nm", bandEdge), tail, picture.Rust},
+		{"junction oxide", film(3), color.RGBA{R: 196, G: 222, B: 232, A: 255}},
+		{"front oxide", film(1), picture.Sky},
+		{"magnesium fluoride", film(0), color.RGBA{R: 60, G: 84, B: 60, A: 255}},
+		{"rear oxide and metal", rear, color.RGBA{R: 150, G: 128, B: 160, A: 255}},
+		{"reflected or escaped", m.response.R, color.RGBA{R: 222, G: 222, B: 222, A: 255}},
+	}
+	boxes := make([]*plotter.Polygon, len(areas))
+	for k, a := range areas {
+		outline := make(plotter.XYs, 2*w)
+		for i, l := range c.sweep.Wavelength {
+			outline[2*w-1-i] = plotter.XY{X: l, Y: base[i]}
+			base[i] += a.share[i]
+			outline[i] = plotter.XY{X: l, Y: base[i]}
 		}
+		area, err := plotter.NewPolygon(outline)
+		if err != nil {
+			return nil, legend, err
+		}
+		area.Color, area.LineStyle = a.color, draw.LineStyle{Color: color.White, Width: vg.Points(0.3)}
+		boxes[k] = area
+		p.Add(area)
 	}
-
-	const width, height = 13 * vg.Centimeter, 10 * vg.Centimeter
-	canvas := vgimg.NewWith(vgimg.UseWH(2*width, height), vgimg.UseDPI(120))
-	dc := draw.New(canvas)
-	currents.Draw(draw.Crop(dc, 0, -width-8, 4, -4))
-	shares.Draw(draw.Crop(dc, width, -8, 4, -4))
-	f, err := os.Create(path)
-	if err != nil {
-		return err
+	for k := len(areas) - 1; k >= 0; k-- {
+		legend.Add(areas[k].name, boxes[k])
 	}
-	defer f.Close()
-	if _, err := (vgimg.PngCanvas{Canvas: canvas}).WriteTo(f); err != nil {
-		return err
-	}
-	return f.Close()
-}
-
-func panel(x, y string) *plot.Plot {
-	p := plot.New()
-	p.X.Label.Text, p.Y.Label.Text = x, y
-	p.Legend.Padding, p.Legend.ThumbnailWidth = 3, 34
-	grid := plotter.NewGrid()
-	grid.Vertical.Color, grid.Horizontal.Color = color.Gray{Y: 228}, color.Gray{Y: 228}
-	p.Add(grid)
-	return p
-}
-
-func add(p *plot.Plot, name string, xy plotter.XYs, c color.Color, dash []vg.Length) error {
-	line, err := plotter.NewLine(xy)
-	if err != nil {
-		return err
-	}
-	line.Color, line.Width, line.Dashes = c, vg.Points(1.7), dash
-	p.Add(line)
-	p.Legend.Add(name, line)
-	return nil
+	return p, legend, nil
 }
