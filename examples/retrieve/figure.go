@@ -1,78 +1,73 @@
 package main
 
 import (
-	"fmt"
-	"image/color"
-	"os"
+	"math"
 
 	"gonum.org/v1/plot"
 	"gonum.org/v1/plot/plotter"
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
-	"gonum.org/v1/plot/vg/vgimg"
+
+	"photonledger/examples/internal/picture"
+	"photonledger/nk"
 )
 
-// drawFigure writes the measurement with the fit, and the residuals below.
-func drawFigure(path string, s *sample, residuals []float64) error {
-	dark, rust := color.RGBA{R: 18, G: 52, B: 92, A: 255}, color.RGBA{R: 176, G: 72, B: 32, A: 255}
-	measured, fitted, rest := make(plotter.XYs, len(residuals)), make(plotter.XYs, len(residuals)), make(plotter.XYs, len(residuals))
-	for i, l := range s.wavelength {
-		measured[i] = plotter.XY{X: l, Y: s.measured[i]}
-		fitted[i] = plotter.XY{X: l, Y: s.measured[i] - residuals[i]}
-		rest[i] = plotter.XY{X: l, Y: residuals[i] / s.sigma[i]}
+// drawFigure writes the measurement with the fit, and the residuals below in
+// units of the noise.
+func drawFigure(path string, m *measurement, fit nk.FitResult) error {
+	n := len(m.wavelength)
+	measured, rest, fitted := make(plotter.XYs, n), make(plotter.XYs, n), make([]float64, n)
+	largest := 0.0
+	for i, l := range m.wavelength {
+		noise := math.Sqrt(fit.ReducedChiSquare)
+		if m.sigma != nil {
+			noise = m.sigma[i]
+		}
+		fitted[i] = m.reflectance[i] - fit.Residuals[i]
+		measured[i] = plotter.XY{X: l, Y: m.reflectance[i]}
+		rest[i] = plotter.XY{X: l, Y: fit.Residuals[i] / noise}
+		largest = max(largest, math.Abs(rest[i].Y))
 	}
+	title := "film on silicon"
+	if m.film != nil {
+		title = "invented measurement of a film on silicon"
+	}
+	top := picture.Panel(title, "", "reflectance")
 	points, err := plotter.NewScatter(measured)
 	if err != nil {
 		return err
 	}
-	points.GlyphStyle = draw.GlyphStyle{Color: dark, Radius: vg.Points(2), Shape: draw.RingGlyph{}}
-	curve, err := plotter.NewLine(fitted)
-	if err != nil {
+	points.GlyphStyle = draw.GlyphStyle{Color: picture.Sky, Radius: vg.Points(2.2), Shape: draw.RingGlyph{}}
+	top.Add(points)
+	top.Legend.Add("measured", points)
+	if err := picture.Line(top, "fitted", m.wavelength, fitted, picture.Ink, picture.Solid); err != nil {
 		return err
 	}
-	curve.Color, curve.Width = rust, vg.Points(1.5)
-	top := plot.New()
-	top.Title.Text = "invented measurement of a nitride film on silicon"
-	top.Y.Label.Text = "reflectance"
-	top.Add(curve, points)
-	top.Legend.Top, top.Legend.Padding = true, 3
-	top.Legend.Add("measured", points)
-	top.Legend.Add("fitted", curve)
+	// The legend stands above the curve.
+	top.Legend.Top, top.Legend.XOffs = true, -6
+	low, high := top.Y.Min, top.Y.Max
+	top.Y.Min, top.Y.Max = min(0, low), high+0.25*(high-low)
 
+	bottom := picture.Panel("", "wavelength (nm)", "residual / noise")
 	dots, err := plotter.NewScatter(rest)
 	if err != nil {
 		return err
 	}
 	dots.GlyphStyle = points.GlyphStyle
-	zero, err := plotter.NewLine(plotter.XYs{{X: s.wavelength[0]}, {X: s.wavelength[len(s.wavelength)-1]}})
-	if err != nil {
+	dots.Color = picture.Ink
+	if err := picture.Line(bottom, "", []float64{m.wavelength[0], m.wavelength[n-1]}, []float64{0, 0}, picture.Grey, picture.Solid); err != nil {
 		return err
 	}
-	zero.Color = color.Gray{Y: 128}
-	bottom := plot.New()
-	bottom.X.Label.Text, bottom.Y.Label.Text = "wavelength (nm)", "residual / noise"
-	bottom.Add(zero, dots)
-
-	var ticks plot.ConstantTicks
-	for _, l := range []float64{400, 500, 600, 700, 800, 900, 1000} {
-		ticks = append(ticks, plot.Tick{Value: l, Label: fmt.Sprint(l)})
-	}
+	bottom.Add(dots)
+	bottom.Y.Max = max(3, 1.05*largest)
+	bottom.Y.Min = -bottom.Y.Max
 	for _, p := range []*plot.Plot{top, bottom} {
-		p.X.Tick.Marker, p.X.Min, p.X.Max = ticks, 400, 1000
+		p.X.Min, p.X.Max = m.wavelength[0], m.wavelength[n-1]
+		p.X.Tick.Marker = picture.Every(100, p.X.Min, p.X.Max)
 	}
-
-	const width, height, low = 16 * vg.Centimeter, 13 * vg.Centimeter, 5 * vg.Centimeter
-	canvas := vgimg.NewWith(vgimg.UseWH(width, height), vgimg.UseDPI(120))
-	dc := draw.New(canvas)
-	top.Draw(draw.Crop(dc, 0, -8, low, -4))
-	bottom.Draw(draw.Crop(dc, 0, -8, 4, low-height-4))
-	f, err := os.Create(path)
-	if err != nil {
-		return err
-	}
-	defer f.Close()
-	if _, err := (vgimg.PngCanvas{Canvas: canvas}).WriteTo(f); err != nil {
-		return err
-	}
-	return f.Close()
+	const width, high1, high2 = 16 * vg.Centimeter, 8.5 * vg.Centimeter, 5 * vg.Centimeter
+	return picture.Save(path, width, high1+high2, func(c draw.Canvas) error {
+		picture.Column(draw.Crop(c, 4, -10, 4, -4), []*plot.Plot{top, bottom}, []vg.Length{high1 - 8, high2})
+		return nil
+	})
 }

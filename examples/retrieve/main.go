@@ -1,55 +1,55 @@
 // Command retrieve finds the thickness and the dispersion of a coating on
-// silicon from a reflectance spectrum, with standard errors, and writes
-// retrieve.csv and retrieve.png.
+// silicon from a reflectance spectrum at normal incidence, with standard errors
+// and correlations, and writes retrieve.csv and a figure.
 //
 // Without -data the measurement is made by the program itself: the reflectance of
-// a published silicon nitride film of known thickness with noise from a seeded
-// generator. It is invented and says so.
+// a published silicon nitride film, a witness of the pilot line, with noise from a
+// seeded generator. It is invented and the program says so.
+//
+// Of a thin film without loss the reflectance alone leaves two indices, n and
+// that of silicon over n; only dispersion and several fringes decide. The program
+// says where a measurement does not.
+//
+// A file for -data has the header wavelength_nm,reflectance or
+// wavelength_nm,reflectance,sigma; reflectances and their standard deviations
+// are shares 0..1, wavelengths ascend, and lines that begin with # are comments.
+// Without sigma the standard errors follow from the scatter of the residuals.
 package main
 
 import (
-	"encoding/csv"
 	"flag"
 	"fmt"
 	"io"
 	"os"
 	"path/filepath"
-	"strconv"
 )
-
-type options struct {
-	out       string
-	thickness float64 // nm, of the film that is measured
-	noise     float64 // standard deviation of a reflectance
-	seed      uint64
-	guess     float64 // nm
-}
 
 func main() {
 	var o options
 	flags := flag.NewFlagSet("retrieve", flag.ContinueOnError)
 	flags.SetOutput(io.Discard)
-	flags.StringVar(&o.out, "out", "out", "folder for retrieve.csv and retrieve.png")
-	flags.Float64Var(&o.thickness, "film", 83, "true thickness of the invented sample, nm")
-	flags.Float64Var(&o.noise, "noise", 0.002, "standard deviation of its measured reflectances")
-	flags.Uint64Var(&o.seed, "seed", 1, "of the noise")
-	flags.Float64Var(&o.guess, "guess", 70, "thickness to start from, nm")
+	flags.StringVar(&o.out, "out", "out", "folder for retrieve.csv and the figure")
+	flags.StringVar(&o.figure, "figure", "retrieve.png", "file of the figure, .png, .svg or .pdf")
+	flags.StringVar(&o.data, "data", "", "CSV file of a measurement: wavelength_nm,reflectance or with a third column sigma")
+	flags.StringVar(&o.model, "model", "cauchy", "dispersion of the film, cauchy or tauclorentz")
+	flags.Float64Var(&o.first, "from", 480, "first wavelength of the fit, nm")
+	flags.Float64Var(&o.last, "to", 1000, "last wavelength of the fit, nm")
+	flags.StringVar(&o.sample, "sample", "sinx209_vogt2015", "material of the invented film, of package nk")
+	flags.Float64Var(&o.thickness, "film", 300, "thickness of the invented film, nm")
+	flags.Float64Var(&o.noise, "noise", 0.002, "standard deviation of an invented reflectance")
+	flags.Uint64Var(&o.seed, "seed", 1, "seed of the noise")
+	flags.Float64Var(&o.guess, "guess", 0, "thickness to start from, nm; 0 tries all from 20 nm to 1500 nm")
 	err := flags.Parse(os.Args[1:])
 	if err == flag.ErrHelp {
 		flags.SetOutput(os.Stdout)
 		flags.Usage()
 		return
 	}
-	switch {
-	case err != nil:
-	case flags.NArg() > 0:
+	if err == nil && flags.NArg() > 0 {
 		err = fmt.Errorf("unexpected argument %q", flags.Arg(0))
-	case !(o.thickness >= 20 && o.thickness <= 1000):
-		err = fmt.Errorf("-film %g: want 20 to 1000 nm", o.thickness)
-	case !(o.noise > 0 && o.noise <= 0.1):
-		err = fmt.Errorf("-noise %g: want a share above 0, at most 0.1", o.noise)
-	case !(o.guess >= 20 && o.guess <= 1000):
-		err = fmt.Errorf("-guess %g: want 20 to 1000 nm", o.guess)
+	}
+	if err == nil {
+		err = o.check()
 	}
 	if err != nil {
 		fmt.Fprintln(os.Stderr, "retrieve:", err)
@@ -61,58 +61,29 @@ func main() {
 	}
 }
 
+// run fits the measurement and writes table, CSV and figure.
 func run(o options, stdout io.Writer) error {
-	s, err := newSample(o)
+	m, err := measure(o)
 	if err != nil {
 		return err
 	}
-	fit, err := s.retrieve(o.guess)
+	f := &fitter{measurement: m, dispersion: dispersions[o.model]()}
+	fits, err := f.retrieve(o.guess)
 	if err != nil {
 		return err
 	}
-	fmt.Fprintf(stdout, "Invented measurement: %d reflectances of a published nitride, %g nm on silicon, noise %g, seed %d\n\n", len(s.measured), o.thickness, o.noise, o.seed)
-	fmt.Fprintf(stdout, "%-22s %12s %12s", "parameter", "value", "+-")
-	for _, name := range parameters {
-		fmt.Fprintf(stdout, " %12s", name)
+	if err := f.table(stdout, fits); err != nil {
+		return err
 	}
-	fmt.Fprintln(stdout, "   (correlation)")
-	for j, name := range parameters {
-		fmt.Fprintf(stdout, "%-22s %12.6g %12.2g", name, fit.Params[j], fit.StdErr[j])
-		for k := range parameters {
-			fmt.Fprintf(stdout, " %12.3f", fit.Correlation[j][k])
-		}
-		fmt.Fprintln(stdout)
-	}
-	n, sigma := s.indexAt(fit, 633)
-	fmt.Fprintf(stdout, "\nindex at 633 nm %.4f +- %.4f, of the sample %.4f\n", n, sigma, s.trueIndex(633))
-	fmt.Fprintf(stdout, "reduced chi-square %.3f with %d degrees of freedom, %d iterations\n", fit.ReducedChiSquare, fit.DOF, fit.Iterations)
 	if err := os.MkdirAll(o.out, 0o755); err != nil {
 		return err
 	}
-	if err := s.writeCSV(filepath.Join(o.out, "retrieve.csv"), fit.Residuals); err != nil {
+	if err := f.writeCSV(filepath.Join(o.out, "retrieve.csv"), fits[0]); err != nil {
 		return err
 	}
-	if err := drawFigure(filepath.Join(o.out, "retrieve.png"), s, fit.Residuals); err != nil {
+	if err := drawFigure(filepath.Join(o.out, o.figure), m, fits[0]); err != nil {
 		return err
 	}
-	_, err = fmt.Fprintf(stdout, "\nwrote retrieve.csv and retrieve.png into %s\n", o.out)
+	_, err = fmt.Fprintf(stdout, "\nwrote retrieve.csv and %s into %s\n", o.figure, o.out)
 	return err
-}
-
-func (s *sample) writeCSV(path string, residuals []float64) error {
-	f, err := os.Create(path)
-	if err != nil {
-		return err
-	}
-	defer f.Close()
-	out := csv.NewWriter(f)
-	lines := [][]string{{"wavelength_nm", "measured", "fitted", "residual"}}
-	number := func(v float64) string { return strconv.FormatFloat(v, 'g', 9, 64) }
-	for i, l := range s.wavelength {
-		lines = append(lines, []string{number(l), number(s.measured[i]), number(s.measured[i] - residuals[i]), number(residuals[i])})
-	}
-	if err := out.WriteAll(lines); err != nil {
-		return err
-	}
-	return f.Close()
 }

@@ -58,9 +58,9 @@ func drawCurrents(curve []point, m point) (*plot.Plot, error) {
 	label.TextStyle[0].YAlign = text.YCenter
 	label.Offset.X = vg.Points(10)
 	p.Add(match, label)
-	p.X.Tick.Marker = picture.Ticks(100, 200, 300, 400, 500, 600, 700, 800, 900, 1000)
+	p.X.Tick.Marker = picture.Every(100, d[0], d[len(d)-1])
 	p.Y.Min, p.Y.Max = 0, 30 // the legend stands below the lines
-	p.Y.Tick.Marker = picture.Ticks(0, 5, 10, 15, 20, 25, 30)
+	p.Y.Tick.Marker = picture.Every(5, 0, 30)
 	p.Legend.XOffs, p.Legend.YOffs = -8, 8
 	return p, nil
 }
@@ -68,7 +68,7 @@ func drawCurrents(curve []point, m point) (*plot.Plot, error) {
 // drawShares stacks what every layer takes. Neighbours differ in lightness.
 func drawShares(c *cell, m point) (*plot.Plot, plot.Legend, error) {
 	p := picture.Panel("where the photons go at the match", "wavelength (nm)", "share of the incident photons")
-	p.X.Tick.Marker, p.Y.Tick.Marker = picture.Ticks(400, 600, 800, 1000, 1200), picture.Ticks(0, 0.2, 0.4, 0.6, 0.8, 1)
+	p.X.Tick.Marker, p.Y.Tick.Marker = picture.Every(200, 400, 1200), picture.Every(0.2, 0, 1)
 	legend := plot.NewLegend()
 	legend.TextStyle.Font.Size = 11
 	legend.Top, legend.Left, legend.Padding, legend.ThumbnailWidth = true, true, 4, 18

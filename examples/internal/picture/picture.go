@@ -6,6 +6,7 @@ import (
 	"errors"
 	"fmt"
 	"image/color"
+	"math"
 	"os"
 	"path/filepath"
 	"slices"
@@ -104,11 +105,11 @@ func Line(p *plot.Plot, name string, x, y []float64, c color.Color, dashes []vg.
 	return nil
 }
 
-// Ticks labels an axis at the given values.
-func Ticks(values ...float64) plot.ConstantTicks {
-	ticks := make(plot.ConstantTicks, len(values))
-	for i, v := range values {
-		ticks[i] = plot.Tick{Value: v, Label: fmt.Sprint(v)}
+// Every labels an axis at the multiples of a step between two ends.
+func Every(step, from, to float64) plot.ConstantTicks {
+	var ticks plot.ConstantTicks
+	for k := math.Ceil(from/step - 1e-9); k*step <= to+1e-9*step; k++ {
+		ticks = append(ticks, plot.Tick{Value: k * step, Label: fmt.Sprintf("%.10g", k*step)})
 	}
 	return ticks
 }

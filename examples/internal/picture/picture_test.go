@@ -15,6 +15,9 @@ import (
 // names are refused before anything is drawn.
 func TestSave(t *testing.T) {
 	dir := t.TempDir()
+	if ticks := Every(0.1, 0, 1); len(ticks) != 11 || ticks[3].Label != "0.3" {
+		t.Errorf("ticks %v", ticks)
+	}
 	for name, signature := range map[string]string{"a.png": "\x89PNG", "a.svg": "<?xml", "a.pdf": "%PDF-"} {
 		path := filepath.Join(dir, name)
 		err := Save(path, 8*vg.Centimeter, 8*vg.Centimeter, func(c draw.Canvas) error {
@@ -22,7 +25,7 @@ func TestSave(t *testing.T) {
 			if err := Line(p, "line", []float64{0, 1}, []float64{0, 1e6}, Ink, Dashed); err != nil {
 				return err
 			}
-			q.X.Tick.Marker = Ticks(0, 0.5, 1)
+			q.X.Tick.Marker = Every(0.1, 0, 1)
 			Column(c, []*plot.Plot{p, q}, []vg.Length{4 * vg.Centimeter, 4 * vg.Centimeter})
 			return nil
 		})
