@@ -1,10 +1,13 @@
-// Command coating designs antireflection coatings on planar silicon: a map of
-// the photon-weighted reflectance over thickness and index of one film, the best
-// single and double layer by analytic gradients, published nitrides with their
-// absorption, the band that 5 % of thickness costs, and the colours of the wafer.
-// It writes coating.csv, coating_map.csv and coating.png.
+// Command coating designs antireflection coatings on planar silicon. It finds
+// the single and the double layer of any index that let most photons into the
+// wafer, and the best thicknesses of published films with what they absorb, by
+// analytic gradients; it says what an error of the thickness costs and which
+// colour the wafer has, and maps the reflectance of one film over thickness and
+// index. It writes coating.csv, coating_map.csv, coating_colours.csv,
+// coating_spectra.csv and a figure.
 //
-// Optical constants and spectrum are published data; the pilot line is invented.
+// Optical constants and spectrum are published data; the pilot line, which runs
+// the nitride sinx209_vogt2015, is invented.
 package main
 
 import (
@@ -15,34 +18,28 @@ import (
 	"path/filepath"
 )
 
-type options struct {
-	out         string
-	first, last float64 // nm, range of the weighted reflectance
-	spread      float64 // relative change of the thickness
-}
-
 func main() {
 	var o options
 	flags := flag.NewFlagSet("coating", flag.ContinueOnError)
 	flags.SetOutput(io.Discard)
-	flags.StringVar(&o.out, "out", "out", "folder for coating.csv, coating_map.csv and coating.png")
+	flags.StringVar(&o.out, "out", "out", "folder for all files")
+	flags.StringVar(&o.figure, "figure", "coating.png", "file of the figure, .png, .svg or .pdf")
+	flags.StringVar(&o.films, "films", "sinx191_vogt2015,sinx209_vogt2015,sinx213_vogt2015", "materials for the film on silicon, of package nk")
+	flags.StringVar(&o.outer, "outer", "mgf2_rodriguez2017", "material for a second film on top, of package nk")
 	flags.Float64Var(&o.first, "from", 300, "first wavelength, nm")
 	flags.Float64Var(&o.last, "to", 1200, "last wavelength, nm")
-	flags.Float64Var(&o.spread, "spread", 0.05, "relative change of all thicknesses for the tolerance band")
+	flags.Float64Var(&o.spread, "spread", 5, "change of each thickness for the tolerance, %")
 	err := flags.Parse(os.Args[1:])
 	if err == flag.ErrHelp {
 		flags.SetOutput(os.Stdout)
 		flags.Usage()
 		return
 	}
-	switch {
-	case err != nil:
-	case flags.NArg() > 0:
+	if err == nil && flags.NArg() > 0 {
 		err = fmt.Errorf("unexpected argument %q", flags.Arg(0))
-	case !(o.first >= 300 && o.first < o.last-50 && o.last <= 1200):
-		err = fmt.Errorf("-from %g -to %g: want a range within 300 to 1200 nm", o.first, o.last)
-	case !(o.spread >= 0 && o.spread < 0.5):
-		err = fmt.Errorf("-spread %g: want 0 to 0.5", o.spread)
+	}
+	if err == nil {
+		err = o.check()
 	}
 	if err != nil {
 		fmt.Fprintln(os.Stderr, "coating:", err)
@@ -54,43 +51,30 @@ func main() {
 	}
 }
 
+// run finds the coatings and writes table, CSV files and figure.
 func run(o options, stdout io.Writer) error {
 	w, err := newWafer(o)
 	if err != nil {
 		return err
 	}
-	designs, err := w.designs(o.spread)
+	coatings, err := w.coatings(o)
 	if err != nil {
 		return err
 	}
-	fmt.Fprintf(stdout, "Planar silicon, AM1.5 global %g nm to %g nm, shares of the photons\n\n", o.first, o.last)
-	fmt.Fprintf(stdout, "%-30s %8s %8s %8s %8s %10s %9s %9s %8s   %s\n", "coating", "index", "nm", "index", "nm", "reflected", "absorbed",
-		fmt.Sprintf("-%g %%", 100*o.spread), fmt.Sprintf("+%g %%", 100*o.spread), "colour (sRGB)")
-	for _, d := range designs {
-		second := fmt.Sprintf("%8s %8s", "", "")
-		if len(d.thickness) > 1 {
-			second = fmt.Sprintf("%8.4f %8.2f", d.index[1], d.thickness[1])
-		}
-		fmt.Fprintf(stdout, "%-30s %8.4f %8.2f %s %10.5f %9.5f %9.5f %8.5f   %s\n", d.name, d.index[0], d.thickness[0], second,
-			d.reflected, d.absorbed, d.thinner, d.thicker, hex(d.colour))
-	}
-	fmt.Fprintln(stdout, "\nindices of the published nitrides at 633 nm; reflected at a thinner and a thicker coating")
-	m, err := w.chart()
+	m, err := w.chart(o)
 	if err != nil {
 		return err
 	}
+	table(stdout, o, w, coatings)
 	if err := os.MkdirAll(o.out, 0o755); err != nil {
 		return err
 	}
-	if err := writeDesigns(filepath.Join(o.out, "coating.csv"), designs); err != nil {
+	if err := write(o.out, w, m, coatings); err != nil {
 		return err
 	}
-	if err := m.write(filepath.Join(o.out, "coating_map.csv")); err != nil {
+	if err := drawFigure(filepath.Join(o.out, o.figure), o, w, m, coatings); err != nil {
 		return err
 	}
-	if err := drawFigure(filepath.Join(o.out, "coating.png"), m, designs); err != nil {
-		return err
-	}
-	_, err = fmt.Fprintf(stdout, "\nwrote coating.csv, coating_map.csv and coating.png into %s\n", o.out)
+	_, err = fmt.Fprintf(stdout, "\nwrote coating.csv, coating_map.csv, coating_colours.csv, coating_spectra.csv and %s into %s\n", o.figure, o.out)
 	return err
 }

@@ -1,35 +1,57 @@
 package main
 
 import (
-	"fmt"
 	"math"
 
 	"gonum.org/v1/gonum/floats"
-	"gonum.org/v1/gonum/optimize"
 
 	"photonledger/nk"
 	"photonledger/optics"
 	"photonledger/spectrum"
 )
 
-// wafer is planar silicon under a coating of one or two films.
-type wafer struct {
-	wavelength, weights []float64 // nm; photons of each wavelength, their sum 1
-	silicon             []complex128
+// grid is a set of wavelengths with the silicon behind the coating.
+type grid struct {
+	wavelength []float64 // nm
+	silicon    []complex128
 }
 
-// design is a coating and what it does; shares of the photons.
-type design struct {
-	name                                  string
-	index, thickness                      []float64 // nm
-	reflected, absorbed, thinner, thicker float64
-	colour                                spectrum.Tristimulus
+// wafer is planar silicon, taken as thick: what enters it does not come back.
+type wafer struct {
+	grid
+	weights  []float64 // photons of each wavelength, their sum 1
+	incident float64   // mA/cm² of one electron per photon
+	visible  grid
+	eye      spectrum.Colorimeter
+}
+
+// film is one film of a coating: of a published material, or of a constant index.
+type film struct {
+	material  string          // empty for a constant index
+	table     *nk.Interpolant // of the material
+	index     float64         // constant, or that of the material at 633 nm
+	thickness float64         // nm
+}
+
+// coating is a stack of films, from outside, and what it does; shares of the
+// photons.
+type coating struct {
+	name                         string
+	films                        []film
+	reflected, absorbed, entered float64
+	thinner, thicker, worst      float64 // entered, with all films thinner, all thicker, or the worst mixture
+	colour                       spectrum.Tristimulus
+	spectrum, low, high          []float64 // reflectance, and its lowest and highest values for these thicknesses
 }
 
 func newWafer(o options) (*wafer, error) {
 	w := &wafer{}
-	for l := o.first; l <= o.last; l += 5 {
+	for l := o.first; l < o.last; l++ {
 		w.wavelength = append(w.wavelength, l)
+	}
+	w.wavelength = append(w.wavelength, o.last)
+	for l := violet; l <= red; l += 5 {
+		w.visible.wavelength = append(w.visible.wavelength, l)
 	}
 	silicon, err := nk.Material("si_green2008")
 	if err != nil {
@@ -38,192 +60,168 @@ func newWafer(o options) (*wafer, error) {
 	if w.silicon, err = silicon.Sample(nil, w.wavelength); err != nil {
 		return nil, err
 	}
+	if w.visible.silicon, err = silicon.Sample(nil, w.visible.wavelength); err != nil {
+		return nil, err
+	}
+	if err := w.eye.Prepare(w.visible.wavelength); err != nil {
+		return nil, err
+	}
 	if w.weights, err = spectrum.Weights(nil, spectrum.AM15G(), w.wavelength, spectrum.Photons); err != nil {
 		return nil, err
 	}
-	floats.Scale(1/floats.Sum(w.weights), w.weights)
+	w.incident = floats.Sum(w.weights)
+	floats.Scale(1/w.incident, w.weights)
 	return w, nil
 }
 
-// sweep returns the sweep of films of constant index.
-func (w *wafer) sweep(index, thickness []float64) (optics.Sweep, error) {
-	s := optics.NewSweep(w.wavelength, len(index))
-	copy(s.Thickness, thickness)
-	for j, n := range index {
-		for i := range w.wavelength {
-			s.N[j*len(w.wavelength)+i] = n
-		}
-	}
-	return s, s.SetBack(w.silicon)
-}
-
-// best minimises the weighted reflectance of constant films over all indices and
-// thicknesses, from a start, with the derivatives of one reverse pass.
-func (w *wafer) best(index, thickness []float64) (n, d []float64, err error) {
-	const scale = 100 // nm: thicknesses of the order of the indices
-	films := len(index)
-	weights := optics.SweepWeights{R: w.weights}
-	evaluate := func(x []float64) (optics.SweepGradient, error) {
-		d := make([]float64, films)
-		for j := range d {
-			d[j] = scale * math.Abs(x[films+j])
-		}
-		s, err := w.sweep(x[:films], d)
-		if err != nil {
-			return optics.SweepGradient{}, err
-		}
-		_, g, err := s.Gradient(&weights)
-		return g, err
-	}
-	var failed error
-	problem := optimize.Problem{
-		Func: func(x []float64) float64 {
-			g, err := evaluate(x)
-			if err != nil {
-				failed = err
-				return math.Inf(1)
-			}
-			return g.Value
-		},
-		Grad: func(dst, x []float64) {
-			g, err := evaluate(x)
-			if err != nil {
-				failed = err
-				return
-			}
-			count := len(w.wavelength)
-			for j := range films {
-				dst[j] = floats.Sum(g.N[j*count : (j+1)*count])
-				dst[films+j] = scale * g.Thickness[j] * math.Copysign(1, x[films+j])
-			}
-		},
-	}
-	x := append([]float64(nil), index...)
-	for _, t := range thickness {
-		x = append(x, t/scale)
-	}
-	result, err := optimize.Minimize(problem, x, &optimize.Settings{GradientThreshold: 1e-9}, &optimize.BFGS{})
-	if err == nil {
-		err = failed
-	}
-	if err != nil {
-		return nil, nil, fmt.Errorf("optimum: %w", err)
-	}
-	for j := range films {
-		d = append(d, scale*math.Abs(result.X[films+j]))
-	}
-	return result.X[:films], d, nil
-}
-
-// judge fills in what the films of a sweep do.
-func (w *wafer) judge(d *design, s optics.Sweep, spread float64) error {
-	take := func(factor float64) (reflected, absorbed float64, r optics.SweepResponse, err error) {
-		t := s
-		t.Thickness = append([]float64(nil), d.thickness...)
-		floats.Scale(factor, t.Thickness)
-		r, err = t.Run()
-		if err != nil {
-			return 0, 0, r, err
-		}
-		for j := range t.Thickness {
-			absorbed += floats.Dot(w.weights, r.A[j*len(w.weights):(j+1)*len(w.weights)])
-		}
-		return floats.Dot(w.weights, r.R), absorbed, r, nil
-	}
+// newFilm is a film of a published material.
+func newFilm(material string) (film, error) {
+	f := film{material: material}
 	var err error
-	if d.thinner, _, _, err = take(1 - spread); err != nil {
+	if f.table, err = nk.Material(material); err != nil {
+		return f, err
+	}
+	n, err := f.table.At(633)
+	f.index = real(n)
+	return f, err
+}
+
+// sweep lays films on the silicon of a grid.
+func (g *grid) sweep(films []film) (optics.Sweep, error) {
+	s := optics.NewSweep(g.wavelength, len(films))
+	s.Workers = 0
+	index := make([]complex128, len(g.wavelength))
+	for j, f := range films {
+		for i := range index {
+			index[i] = complex(f.index, 0)
+		}
+		if f.table != nil {
+			if _, err := f.table.Sample(index, g.wavelength); err != nil {
+				return s, err
+			}
+		}
+		if err := s.SetFilm(j, index, f.thickness); err != nil {
+			return s, err
+		}
+	}
+	return s, s.SetBack(g.silicon)
+}
+
+// judge fills in what a coating does.
+func (w *wafer) judge(c *coating, spread float64) error {
+	s, err := w.sweep(c.films)
+	if err != nil {
 		return err
 	}
-	if d.thicker, _, _, err = take(1 + spread); err != nil {
+	r, err := s.Run()
+	if err != nil {
 		return err
 	}
-	var r optics.SweepResponse
-	if d.reflected, d.absorbed, r, err = take(1); err != nil {
-		return err
+	c.reflected, c.entered = floats.Dot(w.weights, r.R), floats.Dot(w.weights, r.T)
+	c.absorbed = 0
+	for j := range c.films {
+		c.absorbed += floats.Dot(w.weights, r.A[j*len(w.weights):(j+1)*len(w.weights)])
 	}
-	if w.wavelength[0] > 380 || w.wavelength[len(w.wavelength)-1] < 780 {
-		return nil // no colour without the visible
+	c.spectrum = r.R
+	c.worst = c.entered
+	c.low, c.high = append([]float64(nil), r.R...), append([]float64(nil), r.R...)
+	// Every film thinner or thicker, in all mixtures: bit j stands for film j.
+	for mixture := range 1 << len(c.films) {
+		for j, f := range c.films {
+			s.Thickness[j] = f.thickness * (1 - spread)
+			if mixture>>j&1 == 1 {
+				s.Thickness[j] = f.thickness * (1 + spread)
+			}
+		}
+		if r, err = s.Run(); err != nil {
+			return err
+		}
+		entered := floats.Dot(w.weights, r.T)
+		if mixture == 0 {
+			c.thinner = entered
+		}
+		c.thicker = entered // the last one stays
+		c.worst = min(c.worst, entered)
+		for i, v := range r.R {
+			c.low[i], c.high[i] = min(c.low[i], v), max(c.high[i], v)
+		}
 	}
-	d.colour, err = spectrum.Colour(w.wavelength, r.R)
+	c.colour, err = w.look(c.films)
 	return err
 }
 
-// designs returns the best constant films and the best thickness of published
-// nitrides, for which what is lost in the film counts too.
-func (w *wafer) designs(spread float64) ([]design, error) {
-	var all []design
-	for _, start := range []design{
-		{name: "best single layer", index: []float64{2}, thickness: []float64{75}},
-		{name: "best double layer", index: []float64{1.5, 2.4}, thickness: []float64{100, 60}},
-	} {
-		d := design{name: start.name}
-		var err error
-		if d.index, d.thickness, err = w.best(start.index, start.thickness); err != nil {
-			return nil, err
-		}
-		s, err := w.sweep(d.index, d.thickness)
-		if err == nil {
-			err = w.judge(&d, s, spread)
-		}
-		if err != nil {
-			return nil, err
-		}
-		all = append(all, d)
+// look returns the colour of the wafer in daylight, at normal incidence.
+func (w *wafer) look(films []film) (spectrum.Tristimulus, error) {
+	s, err := w.visible.sweep(films)
+	if err != nil {
+		return spectrum.Tristimulus{}, err
 	}
-	for _, name := range []string{"sinx191_vogt2015", "sinx209_vogt2015", "sinx213_vogt2015"} {
-		d, err := w.nitride(name, spread)
-		if err != nil {
-			return nil, err
-		}
-		all = append(all, d)
+	r, err := s.Run()
+	if err != nil {
+		return spectrum.Tristimulus{}, err
 	}
-	return all, nil
+	return w.eye.Colour(r.R)
 }
 
-// nitride finds the thickness of a published nitride that lets most photons into
-// the wafer, by the sign of the derivative of that share.
-func (w *wafer) nitride(name string, spread float64) (design, error) {
-	material, err := nk.Material(name)
+// chart is the weighted reflectance of one film over thickness and index, and the
+// colours of the wafer under the films of the table.
+type chart struct {
+	thickness, index []float64
+	reflected        [][]float64 // [index][thickness]
+	films            []film
+	colours          [][]spectrum.Tristimulus // [film][thickness]
+}
+
+func (w *wafer) chart(o options) (*chart, error) {
+	m := &chart{thickness: floats.Span(make([]float64, 81), 40, 200), index: floats.Span(make([]float64, 71), 1.4, 2.8)}
+	s, err := w.sweep([]film{{index: 1}})
 	if err != nil {
-		return design{}, err
+		return nil, err
 	}
-	index, err := material.Sample(nil, w.wavelength)
-	if err != nil {
-		return design{}, err
+	var sweeper optics.Sweeper
+	var r optics.SweepResponse
+	for _, n := range m.index {
+		row := make([]float64, len(m.thickness))
+		for i := range s.N {
+			s.N[i] = n
+		}
+		for c, d := range m.thickness {
+			s.Thickness[0] = d
+			if err := sweeper.Run(&r, &s); err != nil {
+				return nil, err
+			}
+			row[c] = floats.Dot(w.weights, r.R)
+		}
+		m.reflected = append(m.reflected, row)
 	}
-	n633, err := material.At(633)
-	if err != nil {
-		return design{}, err
-	}
-	s, err := w.sweep([]float64{1}, []float64{0})
-	if err == nil {
-		err = s.SetFilm(0, index, 75)
-	}
-	if err != nil {
-		return design{}, err
-	}
-	slope := func(d float64) (float64, error) {
-		s.Thickness[0] = d
-		_, g, err := s.Gradient(&optics.SweepWeights{T: w.weights})
+	for _, name := range o.inner() {
+		f, err := newFilm(name)
 		if err != nil {
-			return 0, err
+			return nil, err
 		}
-		return g.Thickness[0], nil
+		row := make([]spectrum.Tristimulus, len(m.thickness))
+		for c, d := range m.thickness {
+			f.thickness = d
+			if row[c], err = w.look([]film{f}); err != nil {
+				return nil, err
+			}
+		}
+		m.films, m.colours = append(m.films, f), append(m.colours, row)
 	}
-	// That share has one maximum between 40 nm and 120 nm.
-	lo, hi := 40.0, 120.0
-	for hi-lo > 1e-6 {
-		mid := 0.5 * (lo + hi)
-		g, err := slope(mid)
-		if err != nil {
-			return design{}, err
-		}
-		if g > 0 {
-			lo = mid
-		} else {
-			hi = mid
-		}
+	return m, nil
+}
+
+// Dims, X, Y and Z make the chart a grid of gonum/plot.
+func (m *chart) Dims() (c, r int)   { return len(m.thickness), len(m.index) }
+func (m *chart) X(c int) float64    { return m.thickness[c] }
+func (m *chart) Y(r int) float64    { return m.index[r] }
+func (m *chart) Z(c, r int) float64 { return m.reflected[r][c] }
+
+// least is the smallest value of the chart.
+func (m *chart) least() float64 {
+	least := math.Inf(1)
+	for _, row := range m.reflected {
+		least = min(least, floats.Min(row))
 	}
-	d := design{name: name, index: []float64{real(n633)}, thickness: []float64{lo}}
-	return d, w.judge(&d, s, spread)
+	return least
 }

@@ -94,8 +94,8 @@ func drawShares(c *cell, m point) (*plot.Plot, plot.Legend, error) {
 		{fmt.Sprintf("perovskite, tail > %g nm", bandEdge), tail, picture.Rust},
 		{"junction oxide", film(3), color.RGBA{R: 196, G: 222, B: 232, A: 255}},
 		{"front oxide", film(1), picture.Sky},
-		{"magnesium fluoride", film(0), color.RGBA{R: 60, G: 84, B: 60, A: 255}},
-		{"rear oxide and metal", rear, color.RGBA{R: 150, G: 128, B: 160, A: 255}},
+		{"magnesium fluoride", film(0), color.RGBA{R: 196, G: 208, B: 180, A: 255}},
+		{"rear oxide and metal", rear, color.RGBA{R: 84, G: 60, B: 92, A: 255}},
 		{"reflected or escaped", m.response.R, color.RGBA{R: 222, G: 222, B: 222, A: 255}},
 	}
 	boxes := make([]*plotter.Polygon, len(areas))

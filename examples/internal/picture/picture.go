@@ -109,7 +109,8 @@ func Line(p *plot.Plot, name string, x, y []float64, c color.Color, dashes []vg.
 func Every(step, from, to float64) plot.ConstantTicks {
 	var ticks plot.ConstantTicks
 	for k := math.Ceil(from/step - 1e-9); k*step <= to+1e-9*step; k++ {
-		ticks = append(ticks, plot.Tick{Value: k * step, Label: fmt.Sprintf("%.10g", k*step)})
+		v := k*step + 0 // 0 instead of -0
+		ticks = append(ticks, plot.Tick{Value: v, Label: fmt.Sprintf("%.10g", v)})
 	}
 	return ticks
 }

@@ -15,7 +15,7 @@ import (
 // names are refused before anything is drawn.
 func TestSave(t *testing.T) {
 	dir := t.TempDir()
-	if ticks := Every(0.1, 0, 1); len(ticks) != 11 || ticks[3].Label != "0.3" {
+	if ticks := Every(0.1, 0, 1); len(ticks) != 11 || ticks[3].Label != "0.3" || ticks[0].Label != "0" {
 		t.Errorf("ticks %v", ticks)
 	}
 	for name, signature := range map[string]string{"a.png": "\x89PNG", "a.svg": "<?xml", "a.pdf": "%PDF-"} {
